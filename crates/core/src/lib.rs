@@ -38,6 +38,7 @@ mod row;
 pub mod sample;
 pub mod stand;
 pub mod tables;
+pub mod study;
 pub mod task;
 mod upper;
 
@@ -54,5 +55,6 @@ pub use pose::{Joints, Point, Posture, pose};
 pub use posture::posture;
 pub use readings::{Readings, posture_notices, readings};
 pub use row::Refusal;
+pub use study::{Step, Study, study};
 pub use tables::SegmentTable;
 pub use task::{Bend, Placement, Rule, Seen, Support, Task};
