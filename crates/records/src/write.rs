@@ -1,0 +1,44 @@
+//! A client to the text of a file.
+
+use std::path::PathBuf;
+
+use ron::ser::PrettyConfig;
+
+use crate::{
+    client::Client,
+    problem::Problem,
+    read::{Opened, read},
+    v1::{self, Saved},
+};
+
+/// Depth to which fields stand on lines of their own: those of the client and those of a visit.
+const LINES_TO_DEPTH: usize = 2;
+
+/// The text of a client's file, in the current format.
+///
+/// Reading the text again gives the same client, every number to its bits; that is tried before the
+/// text is handed out, so nothing is written that could not be read.
+///
+/// # Errors
+/// A [`Problem`] that names the field that is out of its bounds, not finite or otherwise unfit.
+pub fn write(client: &Client) -> Result<String, Problem> {
+    let file = PathBuf::from(format!("{}.ron", client.code));
+    let unfit = |value: String| Problem {
+        file: file.clone(),
+        line: None,
+        field: None,
+        value,
+        allowed: "a client that can be read again".to_owned(),
+        hint: "it was not saved, please report this",
+    };
+    let layout = PrettyConfig::new().depth_limit(LINES_TO_DEPTH).compact_arrays(true).new_line("\n");
+    let mut text =
+        ron::ser::to_string_pretty(&v1::Client::of(client), layout).map_err(|error| unfit(error.to_string()))?;
+    text.push('\n');
+    match read(text.as_bytes(), &file) {
+        Ok(Opened::Current(again)) if again == *client => Ok(text),
+        Ok(_) => Err(unfit("a text that reads otherwise".to_owned())),
+        // The line would be one of a text that nobody sees.
+        Err(problem) => Err(Problem { line: None, hint: "correct it, then save again", ..problem }),
+    }
+}
