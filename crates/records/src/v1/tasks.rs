@@ -127,11 +127,11 @@ impl<'de> Deserialize<'de> for Support {
             .flatten()
             .map(|fraction| fraction.0)
             .collect();
-        match given.windows(2).find(|pair| pair[0] >= pair[1]) {
+        match given.windows(2).find(|pair| pair[0] > pair[1]) {
             None => Ok(Self { edge_back, zone_back, aim, zone_front, edge_front }),
             Some(pair) => {
                 let found = format!("{:?} followed by {:?}", pair[0], pair[1]);
-                Err(D::Error::invalid_value(Unexpected::Other(&found), &"fractions that rise from heel to toe"))
+                Err(D::Error::invalid_value(Unexpected::Other(&found), &"fractions in rising order from heel to toe"))
             }
         }
     }

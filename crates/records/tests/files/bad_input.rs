@@ -127,18 +127,18 @@ fn rows() -> Vec<Row> {
             "a name of its own for each task",
         ),
         row(
-            with("aim: 0.45", "aim: 0.35"),
+            with("aim: 0.45", "aim: 0.3"),
             25,
             "visits[0].tasks[0].support",
-            "0.35 followed by 0.35",
-            "fractions that rise from heel to toe",
+            "0.35 followed by 0.3",
+            "fractions in rising order from heel to toe",
         ),
         row(
             with("edge_front: Some(0.75)", "edge_front: Some(0.5)"),
             25,
             "visits[0].tasks[0].support",
             "0.55 followed by 0.5",
-            "fractions that rise from heel to toe",
+            "fractions in rising order from heel to toe",
         ),
         row("(format: 1, code: \"x\", visits: [])".to_owned(), 1, "visits", "no visit", "at least one visit"),
         row(

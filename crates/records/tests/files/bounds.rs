@@ -155,7 +155,7 @@ fn both_ends_are_read_and_what_lies_beyond_is_refused() {
                 if field == Field::SupportFraction {
                     // In bounds, though out of order for some of the five.
                     if let Err(refused) = plumbfold_records::read(text.as_bytes(), "x.ron".as_ref()) {
-                        assert_eq!(refused.allowed, "fractions that rise from heel to toe", "{path} = {end}");
+                        assert_eq!(refused.allowed, "fractions in rising order from heel to toe", "{path} = {end}");
                     }
                 } else {
                     // And it can be written again.
