@@ -29,17 +29,20 @@
 //! ```
 
 pub mod chart;
+pub mod figure;
 pub mod fonts;
 pub mod format;
 pub mod geometry;
 pub mod measure;
 pub mod place;
+pub mod plots;
 pub mod scene;
 pub mod shapes;
 pub mod theme;
 pub mod words;
 
 pub use chart::{Axis, Band, BandKind, Chart, Look as ChartLook, Mark, Series, chart};
+pub use figure::{Facing, Look, Show, View, figure};
 pub use fonts::text_width;
 pub use geometry::{Convex, Pt, RectPt, Size};
 pub use measure::{out_of_page, overlaps};

@@ -59,7 +59,11 @@ impl Scene {
     /// Everything of another scene moved by a step, on top of this one.
     pub fn place(&mut self, other: Scene, at: Pt) {
         self.items.extend(other.items.into_iter().map(|item| item.moved(at)));
-        self.grips.extend(other.grips.into_iter().map(|g| Grip { hit: g.hit.moved(at), ..g }));
+        self.grips.extend(other.grips.into_iter().map(|g| Grip {
+            hit: g.hit.moved(at),
+            track: g.track.map(|(a, b)| (a + at, b + at)),
+            ..g
+        }));
     }
 
     /// All labels, in the order drawn.
@@ -290,6 +294,9 @@ pub struct Grip {
     pub range: (f64, f64),
     /// Unit of value and range.
     pub unit: Unit,
+    /// The line along which it moves, where that is a straight one: from the place of the least
+    /// value to that of the greatest, in equal parts.
+    pub track: Option<(Pt, Pt)>,
 }
 
 #[cfg(test)]

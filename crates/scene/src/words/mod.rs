@@ -9,6 +9,8 @@ pub mod clinician;
 pub mod names;
 pub mod notices;
 
+pub use notices::STANDING_CAUTION as CAUTION;
+
 /// Beginnings of words that a client's view or sheet never shows.
 pub const NEVER: [&str; 18] = [
     "limit", "fail", "fall", "tip", "weak", "bad", "abnormal", "wrong", "cost", "round", "risk", "damage", "only", "%",

@@ -1,0 +1,176 @@
+//! Where things go: heading, rail column, floor, and the scale at which the body fits.
+
+use plumbfold_core::{Case, Posture};
+
+use super::{Controls, Look, Show, Style, gear, rail, rail::Rail, view::View};
+use crate::{
+    fonts,
+    geometry::{Pt, RectPt, Size},
+    place::Wanted,
+    scene::{Anchor, Label, Weight},
+    theme::Role,
+    words,
+};
+
+/// What must fit.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Frame {
+    /// Every posture from standing down, so that the scale stays while one drags.
+    WholeDescent,
+    /// The posture shown, as large as it can be.
+    ThisPosture,
+}
+
+/// The layout of one figure.
+pub(super) struct Layout {
+    pub view: View,
+    pub rail: Rail,
+    /// The rail's column, from its top to the floor.
+    pub column: RectPt,
+    /// Where labels may stand around the body.
+    pub labels: RectPt,
+    /// Ends of the floor line.
+    pub floor: (f32, f32),
+    pub heading: Vec<Label>,
+    pub text: f32,
+}
+
+/// Least x, greatest x and greatest height of a figure, m.
+#[derive(Clone, Copy, Debug)]
+struct Extent {
+    back: f64,
+    front: f64,
+    top: f64,
+}
+
+impl Extent {
+    const NONE: Self = Self { back: f64::MAX, front: f64::MIN, top: f64::MIN };
+
+    fn with(self, x: f64, y: f64, r: f64) -> Self {
+        Self { back: self.back.min(x - r), front: self.front.max(x + r), top: self.top.max(y + r) }
+    }
+
+    fn of(self, case: &Case, p: &Posture) -> Self {
+        let (j, s) = (&p.joints, case.body().stature_m);
+        let discs = [
+            (j.hip, 0.072),
+            (j.knee, 0.038),
+            (j.lumbosacral, 0.056),
+            (j.shoulder, 0.05),
+            (j.head, 0.078),
+            (j.elbow, 0.026),
+            (j.wrist, 0.018),
+            (j.fingertip, 0.012),
+            (j.toe, 0.0),
+            (j.heel, 0.0),
+        ];
+        let body = discs.into_iter().fold(self, |e, (q, r)| e.with(q.x, q.y, r * s));
+        let seen = body.with(p.com.x, p.com.y, 0.0);
+        match gear::extent(case, p) {
+            Some((l, r, t)) => Self { back: seen.back.min(l), front: seen.front.max(r), top: seen.top.max(t) },
+            None => seen,
+        }
+    }
+}
+
+fn extent(show: &Show<'_>, frame: Frame) -> Extent {
+    let mut e = Extent::NONE;
+    if let Some(p) = show.shown() {
+        e = e.of(&show.study.case, p);
+    }
+    if let Some(p) = show.straightened.and_then(|_| show.now.posture()) {
+        e = e.of(&show.study.case, p);
+    }
+    if let Some(o) = show.outline {
+        e = e.of(o.case, o.posture);
+    }
+    if frame == Frame::WholeDescent {
+        // every third step, and the last: extents change slowly
+        let steps = &show.study.descent;
+        for s in steps.iter().step_by(3).chain(steps.last()) {
+            if let Some(p) = s.balance.posture() {
+                e = e.of(&show.study.case, p);
+            }
+        }
+    }
+    if e.back > e.front {
+        e = Extent { back: -0.3, front: 0.5, top: 1.0 };
+    }
+    e
+}
+
+fn heading(show: &Show<'_>, width: f32, look: &Look) -> (Vec<Label>, f32) {
+    let t = look.text;
+    let mut out = Vec::new();
+    let mut y = t * 0.7;
+    let mut add = |text: &str, size: f32, weight, role| {
+        for line in fonts::wrap(text, size, weight, width - 2.0 * t) {
+            y += size * 1.02;
+            let w = Wanted { text: line, size, weight, role };
+            out.push(w.at(Pt::new(t, y), Anchor::Start));
+            y += size * 0.33;
+        }
+    };
+    match look.style {
+        Style::Annotated => {
+            add(&show.title(), t * 1.5, Weight::SemiBold, Role::Ink);
+            add(&show.meaning(), t, Weight::Regular, Role::Ink);
+            if let Some(note) = show.note {
+                add(note, t, Weight::SemiBold, Role::Accent);
+            }
+            let captions = show.captions();
+            if !captions.is_empty() {
+                add(&words::capital(&captions.join(" · ")), t * 0.9, Weight::Regular, Role::InkSoft);
+            }
+        }
+        Style::Client => add(&show.sentence(), t * 1.25, Weight::SemiBold, Role::Ink),
+    }
+    (out, y)
+}
+
+impl Layout {
+    pub fn new(show: &Show<'_>, area: Size, look: &Look) -> Self {
+        let t = look.text;
+        let rail = Rail::new(show, look);
+        let (heading, head) = heading(show, area.w, look);
+        let under = match (look.style, look.controls) {
+            (Style::Client, _) => 3.6,
+            (Style::Annotated, Controls::Hidden) => 5.8,
+            (Style::Annotated, Controls::Shown) => 8.2,
+        } * t;
+        let e = extent(show, look.frame);
+        let top = head + t * 0.6;
+        let floor = (area.h - under).max(top + t * 4.0);
+        // behind the hip there must be room for the name of its arm
+        let behind = match look.style {
+            Style::Annotated => fonts::text_width("hip arm 88 cm", t * 1.2, Weight::SemiBold) + t * 1.4,
+            Style::Client => t,
+        };
+        let room = (area.w - rail.width - behind - t * 2.5).max(t * 4.0);
+        let tall = e.top.max(rail::top_m(show.study) + 0.03);
+        let scale = (room / (e.front - e.back) as f32).min((floor - top) / tall as f32);
+        let column_w = rail.width;
+        // centred in what is left, with the spare room shared
+        let spare = (room - scale * (e.front - e.back) as f32).max(0.0);
+        let back_edge = behind * 0.72 + t * 0.6 + spare * 0.5;
+        let forward = match look.facing {
+            super::Facing::Right => 1.0,
+            super::Facing::Left => -1.0,
+        };
+        let (column, origin_x) = if forward > 0.0 {
+            (
+                RectPt::new(Pt::new(area.w - t - column_w, top), Pt::new(area.w - t, floor)),
+                back_edge - scale * e.back as f32,
+            )
+        } else {
+            (RectPt::new(Pt::new(t, top), Pt::new(t + column_w, floor)), area.w - back_edge + scale * e.back as f32)
+        };
+        let view = View::new(Pt::new(origin_x, floor), scale, look.facing);
+        let labels = if forward > 0.0 {
+            RectPt::new(Pt::new(t * 0.6, top), Pt::new(column.min.x - t * 0.3, floor - 2.0))
+        } else {
+            RectPt::new(Pt::new(column.max.x + t * 0.3, top), Pt::new(area.w - t * 0.6, floor - 2.0))
+        };
+        Self { view, rail, column, labels, floor: (t, area.w - t), heading, text: t }
+    }
+}
