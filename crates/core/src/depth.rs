@@ -59,7 +59,8 @@ pub fn room(c: &Case, thigh: Angle, back_m: f64, front_m: f64) -> f64 {
     let (shanks, space) = row.shanks();
     let (low, high) = match shanks {
         Ok(s) => (s.low, s.high),
-        Err(_) => return fold.min(space.min(-f64::MIN_POSITIVE)),
+        // clearly below what counts as feasible
+        Err(_) => return fold.min(space.min(-1e-11)),
     };
     fold.min(space).min(row.slack(low, high, back_m, front_m))
 }

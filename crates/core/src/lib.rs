@@ -37,8 +37,9 @@ pub mod roots;
 mod row;
 pub mod sample;
 pub mod stand;
-pub mod tables;
+pub mod stops;
 pub mod study;
+pub mod tables;
 pub mod task;
 mod upper;
 

@@ -23,6 +23,9 @@ pub const SHANK_MAX: Angle = Angle::from_deg(89.0);
 /// 0.2 mm per degree.
 const WORTH_LEANING_M_PER_RAD: f64 = 0.2e-3 * 180.0 / std::f64::consts::PI;
 
+/// An interval of shank angles that is empty by less than this is a single angle, rad.
+const ROUNDING: f64 = 1e-12;
+
 /// Why a posture does not exist.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
 pub enum Refusal {
@@ -152,16 +155,17 @@ impl<'a> Row<'a> {
             return (Err(Refusal::Stance), -1.0);
         }
         let room = high.rad() - low.rad();
-        if room < 0.0 {
+        if room < -ROUNDING {
             return (Err(Refusal::Ankle), room);
         }
+        let high = high.max(low);
         let low = low.max(Angle::from_rad(v_low.asin()));
         let high = high.min(Angle::from_rad(v_high.asin()));
-        let room = high.rad() - low.rad();
-        if room < 0.0 {
+        let room = room.min(high.rad() - low.rad());
+        if room < -ROUNDING {
             return (Err(Refusal::Stance), room);
         }
-        self.within_knee(low, high, room)
+        self.within_knee(low, high.max(low), room)
     }
 
     /// Of an interval of shank angles, the part (the upper one of two) that the knee limit leaves.
@@ -169,14 +173,15 @@ impl<'a> Row<'a> {
         let limit = self.case.limits.knee.rad();
         let pi = std::f64::consts::PI;
         let high = high.min(Angle::from_rad(pi - self.thigh.rad()));
-        if high < low {
+        if high.rad() < low.rad() - ROUNDING {
             return (Err(Refusal::Knee), high.rad() - low.rad());
         }
+        let high = high.max(low);
         if self.q == 0.0 && self.p == 0.0 && self.beta_is_plain() {
             // both in the sagittal plane: flexion is shank + thigh
             let high = high.min(Angle::from_rad(limit - self.thigh.rad()));
             let left = high.rad() - low.rad();
-            let found = if left < 0.0 { Err(Refusal::Knee) } else { Ok(Shanks { low, high }) };
+            let found = if left < -ROUNDING { Err(Refusal::Knee) } else { Ok(Shanks { low, high: high.max(low) }) };
             return (found, left.min(room));
         }
         if self.most_flexion(low, high) <= limit {
