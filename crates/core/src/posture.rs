@@ -19,6 +19,10 @@ use crate::{
 /// every 2.5° and refine every dip by Brent's method to 1e-8 rad.
 pub fn posture(c: &Case, thigh: Angle) -> Balance {
     let row = Row::new(c, thigh);
+    if let Rule::HeldShank(held) = c.task.rule {
+        // a prescribed shank is refused in the order of a given shank
+        return balance_in(&row, held);
+    }
     if row.lean_high.rad() < LEAN_MIN.rad() - ANGLE_TOL {
         return Balance::Refused(crate::row::Refusal::Hip);
     }
