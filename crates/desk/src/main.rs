@@ -1,2 +1,7 @@
 //! Starts the program.
-fn main() {}
+
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    plumbfold::program(std::env::args_os(), &mut std::io::stdout(), &mut std::io::stderr()).into()
+}

@@ -1,0 +1,9 @@
+//! The panels: each reads the state and returns actions.
+
+pub mod client;
+pub mod dialogs;
+pub mod figure;
+pub mod meaning;
+pub mod measured;
+pub mod plots;
+pub mod top;
