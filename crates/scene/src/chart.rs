@@ -4,7 +4,7 @@
 use crate::{
     fonts, format,
     geometry::{Pt, RectPt, Size},
-    place::{Placer, Wanted},
+    place::{Block, Placer, Wanted},
     scene::{Anchor, Cells, Item, Scene, Weight},
     shapes,
     theme::Role,
@@ -272,7 +272,9 @@ pub fn chart(c: &Chart, area: Size, look: &Look) -> Scene {
         s.fill(shapes::circle(at, t * 0.28), Role::FieldBg);
         placer.take(RectPt { min: at, max: at }.grown(t * 0.5));
         let w = wish(&m.text, Weight::Regular, m.role);
-        if let Some(l) = placer.place(crate::place::around(&w, at, Pt::new(1.0, -1.0), t * 0.8)) {
+        for l in
+            placer.place(crate::place::around(&Block::line(w), at, Pt::new(1.0, -1.0), t * 0.8)).unwrap_or_default()
+        {
             s.text(l);
         }
     }
@@ -282,8 +284,8 @@ pub fn chart(c: &Chart, area: Size, look: &Look) -> Scene {
         let w = wish(&series.name, Weight::SemiBold, series.role);
         let along = [0.5, 0.35, 0.65, 0.2, 0.8, 0.05, 0.95];
         let spots = along.into_iter().filter_map(|f| inside.get((f * inside.len() as f32) as usize).copied());
-        let both = spots.flat_map(|p| [Pt::new(0.0, -1.0), Pt::new(0.0, 1.0)].map(|up| w.beside(p, up, t * 0.5)));
-        if let Some(l) = placer.place(both) {
+        let both = spots.flat_map(|p| [Pt::new(0.0, -1.0), Pt::new(0.0, 1.0)].map(|up| vec![w.beside(p, up, t * 0.5)]));
+        for l in placer.place(both).unwrap_or_default() {
             s.text(l);
         }
     }
@@ -291,8 +293,8 @@ pub fn chart(c: &Chart, area: Size, look: &Look) -> Scene {
         let x = (x_of(band.from).max(plot.min.x) + x_of(band.to).min(plot.max.x)) / 2.0;
         let w = wish(&band.label, Weight::Regular, Role::InkSoft);
         let heights = [0.08_f32, 0.92, 0.3, 0.7, 0.5];
-        let fits = heights.into_iter().map(|f| w.centred(Pt::new(x, plot.min.y + plot.h() * f)));
-        if let Some(l) = placer.place(fits) {
+        let fits = heights.into_iter().map(|f| vec![w.centred(Pt::new(x, plot.min.y + plot.h() * f))]);
+        for l in placer.place(fits).unwrap_or_default() {
             s.text(l);
         }
     }

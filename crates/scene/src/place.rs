@@ -60,6 +60,68 @@ impl Wanted {
     }
 }
 
+/// One or more lines set under each other, placed as one.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Block {
+    /// The lines from the top.
+    pub lines: Vec<Wanted>,
+}
+
+impl Block {
+    /// A block of one line.
+    #[must_use]
+    pub fn line(wanted: Wanted) -> Self {
+        Self { lines: vec![wanted] }
+    }
+
+    /// Width and height of the block, page units.
+    #[must_use]
+    pub fn size(&self) -> (f32, f32) {
+        let w = self.lines.iter().map(|l| fonts::text_width(&l.text, l.size, l.weight)).fold(0.0, f32::max);
+        let gaps = LEADING * self.lines.iter().skip(1).map(|l| l.size).sum::<f32>();
+        (w, self.lines.iter().map(|l| l.size).sum::<f32>() + gaps)
+    }
+
+    /// Largest font size in it.
+    #[must_use]
+    pub fn font(&self) -> f32 {
+        self.lines.iter().map(|l| l.size).fold(0.0, f32::max)
+    }
+
+    /// The block beside a target, in a direction, at a distance from it.
+    fn beside(&self, (w, h): (f32, f32), target: Pt, direction: Pt, distance: f32) -> Vec<Label> {
+        let u = direction.unit();
+        let anchor = if u.x > 0.3 {
+            Anchor::Start
+        } else if u.x < -0.3 {
+            Anchor::End
+        } else {
+            Anchor::Middle
+        };
+        let x = target.x
+            + match anchor {
+                Anchor::Start | Anchor::End => u.x * distance,
+                Anchor::Middle => u.x * (distance + w / 2.0),
+            };
+        let mut top = target.y + u.y * (distance + h / 2.0) - h / 2.0;
+        let mut out = Vec::with_capacity(self.lines.len());
+        for (i, l) in self.lines.iter().enumerate() {
+            if i > 0 {
+                top += LEADING * l.size;
+            }
+            out.push(l.at(Pt::new(x, top + fonts::INK_ABOVE * l.size), anchor));
+            top += l.size;
+        }
+        out
+    }
+}
+
+/// What each later candidate costs more than the one before it.
+const PREFERENCE: f32 = 0.7;
+
+/// Space between the lines of a block, em.
+const LEADING: f32 = 0.22;
+
 /// Finds free places on a page.
 #[derive(Clone, Debug)]
 pub struct Placer {
@@ -107,49 +169,60 @@ impl Placer {
         let areas: f32 = self
             .areas
             .iter()
-            .filter(|(a, _)| {
-                a.bounds().is_some_and(|b| b.meets(&near))
-                    && (near.corners().iter().any(|&c| a.contains(c))
-                        || a.points().iter().any(|&p| near.contains(p))
-                        || a.contains(near.middle()))
-            })
+            .filter(|(a, _)| a.bounds().is_some_and(|b| b.meets(&near)) && touches(a, &near))
             .map(|a| a.1)
             .sum();
         lines + areas
     }
 
+    /// Whether a box crosses a line while it lies on none of the areas: a plate of paper under it
+    /// then keeps its text clear.
+    #[must_use]
+    pub fn wants_plate(&self, area: &RectPt) -> bool {
+        self.lines.iter().any(|(a, b, _)| area.clip(*a, *b).is_some())
+            && !self.areas.iter().any(|(a, _)| a.bounds().is_some_and(|b| b.meets(area)) && touches(a, area))
+    }
+
     /// The best of some candidates in order of preference; takes its place. `None` where none is free.
-    pub fn place(&mut self, candidates: impl IntoIterator<Item = Label>) -> Option<Label> {
-        let mut best: Option<(f32, Label, RectPt)> = None;
-        for (i, label) in candidates.into_iter().enumerate() {
-            let preference = i as f32;
+    pub fn place(&mut self, candidates: impl IntoIterator<Item = Vec<Label>>) -> Option<Vec<Label>> {
+        let mut best: Option<(f32, Vec<Label>, RectPt)> = None;
+        for (i, labels) in candidates.into_iter().enumerate() {
+            let preference = PREFERENCE * i as f32;
             if best.as_ref().is_some_and(|b| b.0 <= preference) {
                 break;
             }
-            let area = label.bounds();
+            let Some(area) = labels.iter().map(Label::bounds).reduce(|a, b| a.around(&b)) else { continue };
             if !self.is_free(&area) {
                 continue;
             }
             let cost = preference + self.cost(&area);
             if best.as_ref().is_none_or(|b| cost < b.0) {
-                best = Some((cost, label, area));
+                best = Some((cost, labels, area));
             }
         }
-        let (_, label, area) = best?;
+        let (_, labels, area) = best?;
         self.taken.push(area);
-        Some(label)
+        Some(labels)
     }
+}
+
+/// Whether an area and a rectangle share a place (corners, or the rectangle's middle).
+fn touches(area: &Convex, r: &RectPt) -> bool {
+    r.corners().iter().any(|&c| area.contains(c))
+        || area.points().iter().any(|&p| r.contains(p))
+        || area.contains(r.middle())
 }
 
 /// Candidates around a target: the wished direction first, then turning away from it to both
 /// sides, then farther out.
-pub fn around(wanted: &Wanted, target: Pt, wish: Pt, near: f32) -> impl Iterator<Item = Label> + '_ {
+pub fn around(block: &Block, target: Pt, wish: Pt, near: f32) -> impl Iterator<Item = Vec<Label>> + '_ {
     let start = wish.y.atan2(wish.x);
-    (0..4).flat_map(move |ring| {
-        let distance = near + wanted.size * 1.2 * ring as f32;
+    let (size, font) = (block.size(), block.font());
+    (0..6).flat_map(move |ring| {
+        let distance = near + font * 0.9 * ring as f32;
         [0.0_f32, 0.4, -0.4, 0.8, -0.8, 1.2, -1.2, 1.7, -1.7, 2.3, -2.3, 3.1].into_iter().map(move |turn| {
             let (s, c) = (start + turn).sin_cos();
-            wanted.beside(target, Pt::new(c, s), distance)
+            block.beside(size, target, Pt::new(c, s), distance)
         })
     })
 }
@@ -204,8 +277,8 @@ pub fn stack(wishes: &[f32], pitch: f32, low: f32, high: f32) -> Vec<f32> {
 mod tests {
     use super::*;
 
-    fn wanted(text: &str) -> Wanted {
-        Wanted { text: text.to_owned(), size: 14.0, weight: Weight::Regular, role: Role::Ink }
+    fn wanted(text: &str) -> Block {
+        Block::line(Wanted { text: text.to_owned(), size: 14.0, weight: Weight::Regular, role: Role::Ink })
     }
 
     #[test]
@@ -214,8 +287,8 @@ mod tests {
         let target = Pt::new(150.0, 100.0);
         let a = p.place(around(&wanted("knee 99°"), target, Pt::new(1.0, 0.0), 10.0)).expect("free");
         let b = p.place(around(&wanted("shank 27°"), target, Pt::new(1.0, 0.0), 10.0)).expect("free");
-        assert!(!a.bounds().meets(&b.bounds()));
-        assert!(a.bounds().min.x > target.x);
+        assert!(!a[0].bounds().meets(&b[0].bounds()));
+        assert!(a[0].bounds().min.x > target.x);
     }
 
     #[test]
@@ -231,7 +304,7 @@ mod tests {
         let target = Pt::new(150.0, 100.0);
         p.avoid_line(&[Pt::new(180.0, 0.0), Pt::new(180.0, 200.0)], 30.0);
         let a = p.place(around(&wanted("knee 99°"), target, Pt::new(1.0, 0.0), 10.0)).expect("free");
-        assert!(a.bounds().clip(Pt::new(180.0, 0.0), Pt::new(180.0, 200.0)).is_none());
+        assert!(a[0].bounds().clip(Pt::new(180.0, 0.0), Pt::new(180.0, 200.0)).is_none());
     }
 
     #[test]

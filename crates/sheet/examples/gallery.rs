@@ -9,8 +9,9 @@ use plumbfold_core::{
     posture, sample, study,
 };
 use plumbfold_scene::{
-    Facing, Look, Scene, Show, Size, Theme, figure,
+    Facing, Look, Page, Scene, Show, Size, Theme, figure,
     figure::{Frame, Outline},
+    sheet_page,
 };
 
 fn cases() -> Vec<(&'static str, Measures, Task)> {
@@ -61,7 +62,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         Ok(())
     };
     for (name, m, t) in cases() {
-        let (case, _) = Case::new(&m, &t)?;
+        let (case, notices) = Case::new(&m, &t)?;
         let s = study(&case);
         let average = case.with_average_lengths();
         for deg in [0.0, 45.0, 75.0, 100.0] {
@@ -79,6 +80,15 @@ fn main() -> Result<(), Box<dyn Error>> {
         }
         let thigh = Angle::from_deg(75.0);
         let now = posture(&case, thigh);
+        let page = Page {
+            code: name,
+            date: "3 Nov 2026",
+            visit: 1,
+            task: "main",
+            show: show(&s, &now, thigh),
+            notices: &notices,
+        };
+        write(&format!("{name}-page"), &sheet_page(&page), Theme::light(), 1800)?;
         let client = figure(&show(&s, &now, thigh), Size::new(1920.0, 1080.0), &Look::client(34.0, Facing::Right)).0;
         write(&format!("{name}-client"), &client, Theme::light(), 1280)?;
         if let Some(p) = now.posture() {

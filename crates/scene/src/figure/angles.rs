@@ -6,7 +6,7 @@ use super::view::View;
 use crate::{
     format,
     geometry::Pt,
-    place::Wanted,
+    place::{Block, Wanted},
     scene::{Scene, Weight},
     shapes,
     theme::Role,
@@ -69,18 +69,19 @@ impl UsedUp {
     }
 }
 
-fn suffix(used: Option<Origin>) -> &'static str {
+/// Written under an angle that stands at its limit.
+const fn reason(used: Option<Origin>) -> &'static str {
     match used {
         None => "",
-        Some(Origin::Measured) => " · used up",
-        Some(Origin::Assumed) => " · assumed range used up",
-        Some(Origin::Precaution) => " · precaution reached",
+        Some(Origin::Measured) => "used up",
+        Some(Origin::Assumed) => "assumed range used up",
+        Some(Origin::Precaution) => "precaution reached",
     }
 }
 
 /// A label that wants to stand near a place, in a direction from it.
 pub(super) struct Named {
-    pub text: Wanted,
+    pub text: Block,
     pub target: Pt,
     pub wish: Pt,
     pub near: f32,
@@ -88,62 +89,74 @@ pub(super) struct Named {
 
 /// Draws arcs and returns the labels that name them, the most important first.
 pub(super) fn draw(scene: &mut Scene, view: &View, case: &Case, p: &Posture, t: f32) -> Vec<Named> {
-    let (j, used) = (&p.joints, UsedUp::of(case, p));
+    let (j, used, s) = (&p.joints, UsedUp::of(case, p), case.body().stature_m);
     let at = |q| view.to_page(q);
-    let joint = view.length(0.045 * case.body().stature_m);
     let mut out = Vec::new();
-    let mut name = |text: String, size: f32, strong: bool, role, target, wish: Pt, near| {
-        let weight = if strong { Weight::SemiBold } else { Weight::Regular };
-        out.push(Named { text: Wanted { text, size, weight, role }, target, wish, near });
-    };
+    let (behind, ahead) = (Pt::new(-view.forward(), 0.0), Pt::new(view.forward(), 0.0));
 
     // lean: from the vertical to the trunk line, about the lumbosacral joint
     let (low, up) = (at(j.lumbosacral), Pt::new(0.0, -1.0));
     let radius = at(j.shoulder).distance(low) * 0.78;
-    for d in shapes::dashes(&[low, low + up * (radius + t * 0.8)], 3.0, 3.0) {
-        scene.line(d, 1.3, Role::Back);
-    }
-    let (from, to) = (up.y.atan2(up.x), up.y.atan2(up.x) + view.forward() * p.trunk.rad() as f32);
+    dotted(scene, low, low + up * (radius + t * 0.5), 1.3, Role::Back);
+    let upright = -std::f32::consts::FRAC_PI_2;
+    let to = upright + view.forward() * p.trunk.rad() as f32;
     if p.trunk.deg().abs() > 1.0 {
-        scene.line(shapes::arc(low, radius, from, to), 2.2, Role::Back);
+        scene.line(shapes::arc(low, radius, upright, to), 2.2, Role::Back);
     }
-    let middle = shapes::on_circle(low, radius, f32::midpoint(from, to) - view.forward() * 0.15);
-    let lean = format!("{}{}", words::clinician::lean(p.trunk), if used.lean { " · chosen limit" } else { "" });
-    let outward = (middle - low).unit() + Pt::new(-view.forward() * 0.5, 0.0);
-    name(lean, t * 1.35, true, Role::Back, middle, outward, t * 0.5);
+    let top = low + up * (radius + t * 0.5);
+    let lean =
+        Wanted { text: words::clinician::lean(p.trunk), size: t * 1.35, weight: Weight::SemiBold, role: Role::Back };
+    let mut lines = vec![lean];
+    if used.lean {
+        let text = "chosen to stay within".to_owned();
+        lines.push(Wanted { text, size: t * 0.9, weight: Weight::Regular, role: Role::Back });
+    }
+    if p.bend.deg() >= 0.5 {
+        let text = format!("bend beyond the hip {}", format::deg(p.bend));
+        lines.push(Wanted { text, size: t * 0.9, weight: Weight::Regular, role: Role::Back });
+        if used.bend {
+            let text = "all of what we allow".to_owned();
+            lines.push(Wanted { text, size: t * 0.9, weight: Weight::Regular, role: Role::Back });
+        }
+    }
+    out.push(Named { text: Block { lines }, target: top, wish: behind, near: t * 0.7 });
 
-    let behind = Pt::new(-view.forward(), 0.0);
-    let ahead = Pt::new(view.forward(), 0.0);
-    let knee = format!("knee {}{}", format::deg(p.knee_flexion), suffix(used.knee));
-    name(knee, t, used.knee.is_some(), Role::Knee, at(j.knee), ahead + Pt::new(0.0, -0.25), joint);
-    let hip = format!("hip {}{}", format::deg(p.hip_flexion), suffix(used.hip));
-    name(hip, t, used.hip.is_some(), Role::Hip, at(j.hip), behind + Pt::new(0.0, 0.25), joint * 1.45);
+    let mut joint = |what: &str, angle, used, role, target, wish, near| {
+        let (text, why) = (format!("{what} {}", format::deg(angle)), reason(used));
+        let weight = if why.is_empty() { Weight::Regular } else { Weight::SemiBold };
+        let mut lines = vec![Wanted { text, size: t, weight, role }];
+        if !why.is_empty() {
+            lines.push(Wanted { text: why.to_owned(), size: t * 0.9, weight: Weight::Regular, role });
+        }
+        out.push(Named { text: Block { lines }, target, wish, near });
+    };
+    let (hip_near, knee_near) = (view.length(0.076 * s) + t * 0.3, view.length(0.042 * s) + t * 0.35);
+    joint("hip", p.hip_flexion, used.hip, Role::Hip, at(j.hip), behind + Pt::new(0.0, 0.2), hip_near);
+    joint("knee", p.knee_flexion, used.knee, Role::Knee, at(j.knee), ahead + Pt::new(0.0, -0.3), knee_near);
 
     // shank: from the vertical, about the ankle
     let ankle = at(j.ankle);
     let r = at(j.knee).distance(ankle) * 0.42;
-    for d in shapes::dashes(&[ankle, ankle + up * (r + t * 0.5)], 3.0, 3.0) {
-        scene.line(d, 1.1, Role::Ankle);
-    }
-    let sweep = (at(j.knee) - ankle).unit();
-    let (from, to) = (-std::f32::consts::FRAC_PI_2, sweep.y.atan2(sweep.x));
-    if (to - from).abs() > 0.02 {
-        scene.line(shapes::arc(ankle, r, from, to), 1.6, Role::Ankle);
+    dotted(scene, ankle, ankle + up * (r + t * 0.5), 1.1, Role::Ankle);
+    let along = (at(j.knee) - ankle).unit();
+    let to = along.y.atan2(along.x);
+    if (to - upright).abs() > 0.02 {
+        scene.line(shapes::arc(ankle, r, upright, to), 1.6, Role::Ankle);
     }
     let pitched = case.stand().pitch.deg() > 0.5;
-    let shank = format!("shank {}{}", format::deg(p.shank), if pitched { "" } else { suffix(used.ankle) });
-    let strong = used.ankle.is_some() && !pitched;
-    let arc_end = ankle + up * r;
-    name(shank, t, strong, Role::Ankle, arc_end, behind, t * 0.5);
+    let by_shank = if pitched { None } else { used.ankle };
+    let beside = view.length(0.030 * s) + t * 0.3;
+    joint("shank", p.shank, by_shank, Role::Ankle, ankle + up * r, behind, beside);
     if pitched {
-        let text = format!("ankle {}{}", format::deg(p.ankle), suffix(used.ankle));
-        name(text, t, used.ankle.is_some(), Role::Ankle, ankle, behind, joint);
-    }
-    if p.bend.deg() >= 0.5 {
-        let text = format!("bends {} beyond the hip{}", format::deg(p.bend), if used.bend { " · used up" } else { "" });
-        name(text, t, used.bend, Role::Back, low, behind + Pt::new(0.0, -0.5), joint * 1.35);
+        joint("ankle", p.ankle, used.ankle, Role::Ankle, ankle, behind + Pt::new(0.0, -0.4), beside);
     }
     out
+}
+
+fn dotted(scene: &mut Scene, a: Pt, b: Pt, width: f32, role: Role) {
+    for d in shapes::dashes(&[a, b], 3.0, 3.0) {
+        scene.line(d, width, role);
+    }
 }
 
 #[cfg(test)]

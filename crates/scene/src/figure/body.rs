@@ -76,20 +76,22 @@ pub(super) fn parts(case: &Case, p: &Posture) -> Figure {
     let waist = between(j.lumbosacral, j.shoulder, 0.25);
     let chest = between(j.lumbosacral, j.shoulder, 0.68);
     let head = j.head;
+    let at_head = |up: f64, ahead: f64| head + along * (up * s) + front * (ahead * s);
     let up = |p: Point, r: f64| Point::new(p.x, p.y + r * s);
     let heel_in = |p: Point, r: f64| Point::new(p.x + r * s * 0.8, p.y + r * s);
     // the trunk counts as measured only with its own length; head and neck are always by stature
     let body = vec![
-        part(trunk, &[(between(j.shoulder, head, 0.15), 0.027), (between(j.shoulder, head, 0.75), 0.028)]),
+        // neck, skull, face, nose
+        part(trunk, &[(between(j.shoulder, head, 0.10), 0.027), (at_head(-0.030, -0.006), 0.025)]),
+        part(trunk, &[(at_head(0.016, -0.004), 0.050), (at_head(-0.002, 0.000), 0.049)]),
         part(
             trunk,
-            &[
-                (between(j.shoulder, head, 0.80), 0.040),
-                (head + along * (0.018 * s), 0.049),
-                (head + front * (0.012 * s), 0.044),
-            ],
+            &[(at_head(0.004, 0.018), 0.034), (at_head(-0.036, 0.014), 0.026), (at_head(-0.040, 0.026), 0.014)],
         ),
-        part(trunk, &[(head + front * (0.046 * s) + along * (0.004 * s), 0.010), (head + front * (0.020 * s), 0.022)]),
+        part(
+            trunk,
+            &[(at_head(0.010, 0.046), 0.006), (at_head(-0.008, 0.054), 0.006), (at_head(-0.010, 0.040), 0.008)],
+        ),
         part(trunk, &[(chest + front * (0.004 * s), 0.061), (j.shoulder, 0.042)]),
         part(trunk, &[(waist, 0.052), (chest + front * (0.004 * s), 0.061)]),
         part(trunk, &[(j.lumbosacral, 0.054), (waist, 0.052)]),

@@ -4,7 +4,7 @@ use plumbfold_core::{Case, Placement, Point, Posture};
 
 use super::view::View;
 use crate::{
-    geometry::{Convex, Pt},
+    geometry::{Convex, Pt, RectPt},
     scene::Scene,
     shapes,
     theme::Role,
@@ -17,6 +17,9 @@ const BAR_KG: f64 = 20.0;
 /// Radius at which a bar or a stick is drawn, m (looks only).
 const BAR_M: f64 = 0.020;
 
+/// Half the length of a dumbbell, m (looks only).
+const HALF_M: f64 = 0.16;
+
 /// What is held.
 #[derive(Clone, Copy, Debug, PartialEq)]
 enum Held {
@@ -26,8 +29,10 @@ enum Held {
     Bar(Option<f64>),
     /// A disc held upright, seen edge on; radius, m.
     Plate(f64),
-    /// A round weight; radius, m.
+    /// A round weight with a handle; radius, m.
     Bell(f64),
+    /// A short bar with a weight at each end, seen from its side; radius, m.
+    Dumbbell(f64),
 }
 
 fn held(placement: Placement, load_kg: f64) -> Held {
@@ -38,7 +43,8 @@ fn held(placement: Placement, load_kg: f64) -> Held {
         Placement::Overhead if load_kg > 0.0 => Held::Bar(disc(load_kg)),
         _ if load_kg <= 0.0 => Held::Nothing,
         Placement::ArmsForward | Placement::ArmsCrossed => Held::Plate(by_mass.min(DISC_M) * 1.3),
-        Placement::Goblet | Placement::AtSides | Placement::Overhead => Held::Bell(by_mass.min(DISC_M)),
+        Placement::AtSides => Held::Dumbbell(by_mass.min(DISC_M)),
+        Placement::Goblet | Placement::Overhead => Held::Bell(by_mass.min(DISC_M)),
     }
 }
 
@@ -52,6 +58,7 @@ pub(super) fn extent(case: &Case, p: &Posture) -> Option<(f64, f64, f64)> {
     let r = match held(case.task().placement, case.task().load_kg) {
         Held::Nothing => return None,
         Held::Bar(Some(r)) | Held::Plate(r) | Held::Bell(r) => r,
+        Held::Dumbbell(r) => return Some((at.x - HALF_M, at.x + HALF_M, at.y + r)),
         Held::Bar(None) => BAR_M,
     };
     Some((at.x - r, at.x + r, at.y + r))
@@ -88,6 +95,20 @@ pub(super) fn before(scene: &mut Scene, view: &View, case: &Case, p: &Posture, e
             edge,
             Role::Gear,
         ),
+        Held::Dumbbell(r) => {
+            let (half, thick) = (view.length(HALF_M), view.length(0.055));
+            let pieces = [
+                RectPt::at(at.x - half, at.y - view.length(0.014), 2.0 * half, view.length(0.028)),
+                RectPt::at(at.x - half, at.y - view.length(r), thick, view.length(2.0 * r)),
+                RectPt::at(at.x + half - thick, at.y - view.length(r), thick, view.length(2.0 * r)),
+            ];
+            for piece in pieces {
+                scene.fill(shapes::rounded(piece.grown(edge), edge * 2.0), Role::BodyEdge);
+            }
+            for piece in pieces {
+                scene.fill(shapes::rounded(piece, edge * 2.0), Role::Gear);
+            }
+        }
         Held::Bell(r) => {
             let radius = view.length(r);
             let top = at - Pt::new(0.0, radius * 0.9);

@@ -22,8 +22,8 @@ pub(super) struct Levels {
 impl Levels {
     /// For a floor at page y `floor` and a base font size.
     pub fn new(floor: f32, t: f32) -> Self {
-        let strip = (floor + 0.35 * t, floor + 1.05 * t);
-        let bob = (strip.1 + 0.15 * t, strip.1 + 1.45 * t);
+        let strip = (floor + 0.35 * t, floor + 1.15 * t);
+        let bob = (strip.1 + 0.12 * t, strip.1 + 1.42 * t);
         let rule = (bob.1 + 0.25 * t, bob.1 + 1.15 * t);
         Self { strip, bob, rule }
     }
@@ -35,18 +35,18 @@ pub(super) fn strip(scene: &mut Scene, view: &View, case: &Case, levels: &Levels
     let (top, bottom) = levels.strip;
     let piece = |a: f64, b: f64| RectPt::new(Pt::new(view.x(a), top), Pt::new(view.x(b), bottom));
     let whole = piece(s.heel_m, s.toe_m);
-    scene.fill(shapes::rect(whole.grown(1.0)), Role::BodyEdge);
+    scene.fill(shapes::rect(whole.grown(0.1 * (bottom - top))), Role::BodyEdge);
     scene.fill(shapes::rect(whole), Role::NeedsHold);
     for (a, b) in [(s.edge_back_m, s.zone_back_m), (s.zone_front_m, s.edge_front_m)] {
         let area = shapes::rect(piece(a, b));
         scene.fill(area.clone(), Role::DriftingBg);
-        for l in shapes::hatch(&area, 4.5) {
-            scene.line(l, 1.3, Role::Drifting);
+        for l in shapes::hatch(&area, 0.35 * (bottom - top)) {
+            scene.line(l, 0.11 * (bottom - top), Role::Drifting);
         }
     }
     for edge in [s.edge_back_m, s.edge_front_m] {
         let x = view.x(edge);
-        scene.line([Pt::new(x, top), Pt::new(x, bottom)], 1.3, Role::BodyEdge);
+        scene.line([Pt::new(x, top), Pt::new(x, bottom)], 0.12 * (bottom - top), Role::BodyEdge);
     }
     scene.fill(shapes::rect(piece(s.zone_back_m, s.zone_front_m)), Role::Steady);
 }

@@ -20,8 +20,8 @@ pub use view::{Facing, View};
 use crate::{
     fonts, format,
     geometry::{Pt, RectPt, Size},
-    place::{self, Placer, Wanted},
-    scene::{Anchor, Scene, Weight},
+    place::{self, Block, Placer, Wanted},
+    scene::{Anchor, Label, Scene, Weight},
     shapes,
     theme::Role,
     words,
@@ -179,6 +179,7 @@ impl<'a> Show<'a> {
             out.push(format!("outline: {}", o.what));
         }
         out.extend(words::clinician::estimated(&estimated_lengths(&self.study.case)).map(|s| lower_first(&s)));
+        out.iter_mut().for_each(|s| *s = words::capital(s));
         out
     }
 }
@@ -228,29 +229,42 @@ pub fn figure(show: &Show<'_>, area: Size, look: &Look) -> (Scene, View) {
 
     let levels = Levels::new(view.floor(), t);
     floor(&mut scene, &layout, edge);
-    seat(&mut scene, &layout, p, look);
     behind(&mut scene, show, &view, edge);
     ground::strip(&mut scene, &view, case, &levels);
     gear::behind(&mut scene, &view, case, p, edge);
     gear::under_foot(&mut scene, &view, case, p, edge);
     let parts = body::parts(case, p);
+    let parts = if look.style == Style::Client { parts.solid() } else { parts };
     let paint = |fill| body::Paint { edge: Role::BodyEdge, edge_width: edge, fill, estimated: Role::Estimated };
     body::draw(&mut scene, &view, &parts.body, paint(Role::Body));
+    let pad = seat(&mut scene, &layout, p, look);
     body::draw(&mut scene, &view, &parts.arm, paint(Role::BodyNear));
     gear::before(&mut scene, &view, case, p, edge);
 
     let mut placer = Placer::new(layout.labels, t * 0.25);
     for part in parts.body.iter().chain(&parts.arm) {
-        placer.avoid_area(&part.area(&view, edge), 5.0);
+        placer.avoid_area(&part.area(&view, edge + 1.5), 7.0);
+    }
+    for part in outlined(show).iter().flat_map(|o| o.body.iter().chain(&o.arm)) {
+        placer.avoid_area(&part.area(&view, edge), 3.0);
+    }
+    if let Some((pad, line)) = pad {
+        placer.take(pad);
+        placer.avoid_line(&line, 8.0);
+    }
+    if let Some((l, r, top)) = gear::extent(case, p) {
+        let low = 2.0 * p.joints.load.y - top;
+        let area = RectPt::new(Pt::new(view.x(l), view.y(top)), Pt::new(view.x(r), view.y(low)));
+        placer.avoid_area(&shapes::rect(area), 25.0);
     }
     let com = view.to_page(p.com);
     ground::plumb(&mut scene, &view, p, layout.labels.min.y, &levels, (t * 0.13).clamp(1.6, 4.0));
-    placer.avoid_line(&[Pt::new(com.x, layout.labels.min.y), Pt::new(com.x, view.floor())], 25.0);
+    placer.avoid_line(&[Pt::new(com.x, layout.labels.min.y), Pt::new(com.x, view.floor())], 40.0);
     let named = match look.style {
         Style::Annotated => {
             spine(&mut scene, &view, p, edge);
-            placer.avoid_line(&[view.to_page(p.joints.hip), Pt::new(view.x(p.joints.hip.x), view.floor())], 6.0);
-            placer.avoid_line(&[view.to_page(p.joints.knee), Pt::new(view.x(p.joints.knee.x), view.floor())], 6.0);
+            placer.avoid_line(&[view.to_page(p.joints.hip), Pt::new(view.x(p.joints.hip.x), view.floor())], 10.0);
+            placer.avoid_line(&[view.to_page(p.joints.knee), Pt::new(view.x(p.joints.knee.x), view.floor())], 10.0);
             angles::draw(&mut scene, &view, case, p, t)
         }
         Style::Client => Vec::new(),
@@ -285,7 +299,7 @@ pub fn figure(show: &Show<'_>, area: Size, look: &Look) -> (Scene, View) {
 
 /// Title, meaning and captions.
 fn heading(scene: &mut Scene, layout: &Layout) {
-    for label in &layout.heading {
+    for label in layout.heading.iter().chain(&layout.captions) {
         scene.text(label.clone());
     }
 }
@@ -295,22 +309,34 @@ fn floor(scene: &mut Scene, layout: &Layout, edge: f32) {
     scene.line([Pt::new(layout.floor.0, y), Pt::new(layout.floor.1, y)], edge, Role::BodyEdge);
 }
 
-/// The seat that touches at this depth: a pad under the hip and a thin line to the rail.
-fn seat(scene: &mut Scene, layout: &Layout, p: &Posture, look: &Look) {
+/// The seat that touches at this depth: a pad under the hip and a thin line to the rail. Returns
+/// where it lies.
+fn seat(scene: &mut Scene, layout: &Layout, p: &Posture, look: &Look) -> Option<(RectPt, [Pt; 2])> {
     let (view, t) = (&layout.view, look.text);
     if p.seat_height_m <= 0.0 || p.thigh.deg() < 15.0 {
-        return;
+        return None;
     }
     let y = view.y(p.seat_height_m);
-    let middle = view.x(p.joints.hip.x - 0.03);
+    let middle = view.x(p.joints.hip.x - 0.04);
     let half = view.length(0.13);
-    let pad = RectPt::at(middle - half, y, 2.0 * half, (t * 0.32).max(view.length(0.012)));
+    let pad = RectPt::at(middle - half, y, 2.0 * half, (t * 0.36).max(view.length(0.014)));
     let near = if view.forward() > 0.0 { pad.max.x } else { pad.min.x };
     let far = if view.forward() > 0.0 { layout.column.min.x } else { layout.column.max.x };
-    for d in shapes::dashes(&[Pt::new(near, y + 1.0), Pt::new(far, y + 1.0)], 2.0, 5.0) {
-        scene.line(d, 1.2, Role::Gear);
+    let line = [Pt::new(near, y + 1.0), Pt::new(far, y + 1.0)];
+    let k = t / 13.0;
+    for d in shapes::dashes(&line, 2.0 * k, 5.0 * k) {
+        scene.line(d, 1.2 * k, Role::Gear);
     }
     scene.fill(shapes::rounded(pad, 3.0), Role::Gear);
+    Some((pad, line))
+}
+
+/// The body of the outline, where there is one.
+fn outlined(show: &Show<'_>) -> Option<body::Figure> {
+    let balanced = show.straightened.and_then(|_| show.now.posture()).map(|p| (&show.study.case, p));
+    let other = show.outline.filter(|_| show.straightened.is_none()).map(|o| (o.case, o.posture));
+    let (case, p) = balanced.or(other)?;
+    Some(body::parts(case, p).solid())
 }
 
 /// The outline behind the figure.
@@ -357,13 +383,21 @@ fn under_rule(scene: &mut Scene, show: &Show<'_>, layout: &Layout, p: &Posture, 
 
 /// Places a label; where it had to go far, a thin line leads back.
 fn write(scene: &mut Scene, placer: &mut Placer, n: &angles::Named) {
-    let Some(label) = placer.place(place::around(&n.text, n.target, n.wish, n.near)) else { return };
-    let b = label.bounds();
-    let nearest = Pt::new(n.target.x.clamp(b.min.x, b.max.x), n.target.y.clamp(b.min.y, b.max.y));
-    if nearest.distance(n.target) > n.near + n.text.size * 1.3 {
-        scene.line([n.target.toward(nearest, 0.25), nearest.toward(n.target, 0.12)], 1.0, n.text.role);
+    let Some(labels) = placer.place(place::around(&n.text, n.target, n.wish, n.near)) else { return };
+    let (Some(b), Some(first)) = (labels.iter().map(Label::bounds).reduce(|a, b| a.around(&b)), labels.first()) else {
+        return;
+    };
+    if placer.wants_plate(&b) {
+        scene.fill(shapes::rect(b.grown(1.5)), Role::Paper);
     }
-    scene.text(label);
+    let nearest = Pt::new(n.target.x.clamp(b.min.x, b.max.x), n.target.y.clamp(b.min.y, b.max.y));
+    if nearest.distance(n.target) > n.near + first.size * 1.6 {
+        let start = n.target.toward(nearest, (n.near * 0.9 / nearest.distance(n.target)).min(0.8));
+        scene.line([start, nearest.toward(start, 0.1)], 1.0, first.role);
+    }
+    for label in labels {
+        scene.text(label);
+    }
 }
 
 /// Names of load and wedge, where there are any.
@@ -373,24 +407,22 @@ fn load_name(scene: &mut Scene, placer: &mut Placer, show: &Show<'_>, view: &Vie
     }
     let (task, t) = (show.study.case.task(), look.text);
     let wanted = |text: String| Wanted { text, size: t, weight: Weight::Regular, role: Role::InkSoft };
-    let raise: Vec<String> = [("wedge", task.heel_raise_m), ("shoe heel", task.footwear_drop_m)]
+    let raise: Vec<Wanted> = [("wedge", task.heel_raise_m), ("shoe heel", task.footwear_drop_m)]
         .into_iter()
         .filter(|w| w.1 > 0.0)
-        .map(|(what, m)| format!("{what} {}", format::mm(m)))
+        .map(|(what, m)| wanted(format!("{what} {}", format::mm(m))))
         .collect();
     if task.load_kg > 0.0 {
-        let text = wanted(format::kg(task.load_kg));
+        let text = Block::line(wanted(format::kg(task.load_kg)));
+        let target = view.to_page(p.joints.load);
         let wish = Pt::new(view.forward(), -0.8);
-        write(
-            scene,
-            placer,
-            &angles::Named { text, target: view.to_page(p.joints.load), wish, near: view.length(0.08) },
-        );
+        let reach = gear::extent(&show.study.case, p).map_or(0.05, |(l, r, _)| (r - l) / 2.0);
+        write(scene, placer, &angles::Named { text, target, wish, near: view.length(reach) + t * 0.5 });
     }
     if !raise.is_empty() {
         let target = view.to_page(p.joints.heel);
         let wish = Pt::new(-view.forward(), -0.15);
-        write(scene, placer, &angles::Named { text: wanted(raise.join(", ")), target, wish, near: t });
+        write(scene, placer, &angles::Named { text: Block { lines: raise }, target, wish, near: t * 1.2 });
     }
 }
 

@@ -130,16 +130,20 @@ impl Rail {
             }
         };
         let now = show.shown().map(|p| p.seat_height_m.max(0.0));
-        let small = if client { t * 0.8 } else { t };
         if let Some(m) = now {
-            add(now, words::client::seat_now(m), Weight::SemiBold, Role::Ink, t * 1.15, Mark::Now);
+            let seat = words::client::seat_now(m);
+            let text = match show.shown().filter(|_| !client) {
+                Some(p) => format!("{seat} · {}", format::deg(p.thigh)),
+                None => seat,
+            };
+            add(now, text, Weight::SemiBold, Role::Ink, t * 1.15, Mark::Now);
         }
         let deepest = |a: Option<Angle>| a.and_then(|a| seat_at(case, a));
         let (steady, balance) = (show.study.depths.steady, show.study.depths.balance);
         if client {
             if let Some(m) = deepest(steady) {
                 let text = format!("weight mid-foot to {}", format::cm(m));
-                add(Some(m), text, Weight::Regular, Role::Steady, small, Mark::Plain);
+                add(Some(m), text, Weight::Regular, Role::Steady, t, Mark::Plain);
             }
             if let Some(m) = deepest(balance).filter(|m| *m > 0.02) {
                 add(
@@ -147,15 +151,15 @@ impl Rail {
                     words::client::RAIL_HOLD.to_owned(),
                     Weight::Regular,
                     Role::InkSoft,
-                    small,
+                    t,
                     Mark::Plain,
                 );
             }
         } else {
-            add(Some(top_m(show.study)), "standing".to_owned(), Weight::Regular, Role::InkSoft, small, Mark::Plain);
+            add(Some(top_m(show.study)), "standing".to_owned(), Weight::Regular, Role::InkSoft, t, Mark::Plain);
             if let Some(a) = steady {
                 let text = format!("on mid-foot to {}", format::deg_spoken(a));
-                add(deepest(steady), text, Weight::SemiBold, Role::Steady, small, Mark::Plain);
+                add(deepest(steady), text, Weight::SemiBold, Role::Steady, t, Mark::Plain);
             }
             let same = steady.zip(balance).is_some_and(|(s, b)| (b.deg() - s.deg()).abs() < 0.5);
             if let Some(a) = balance {
@@ -164,21 +168,21 @@ impl Rail {
                 } else {
                     format!("needs a hold below {}", format::deg_spoken(a))
                 };
-                add(deepest(balance), text, Weight::Regular, Role::Ink, small, Mark::Plain);
+                add(deepest(balance), text, Weight::Regular, Role::Ink, t, Mark::Plain);
             }
             let task = case.task();
             let goal = format!("goal {}", format::deg(task.goal));
-            add(seat_at(case, task.goal), goal, Weight::SemiBold, Role::Goal, small, Mark::Goal);
+            add(seat_at(case, task.goal), goal, Weight::SemiBold, Role::Goal, t, Mark::Goal);
             if let Some(seen) = task.seen {
                 let seat = pose(case, seen.shank, seen.thigh, seen.trunk).map(|p| p.seat_height_m.max(0.0));
-                add(seat, format!("seen {}", format::deg(seen.thigh)), Weight::SemiBold, Role::Seen, small, Mark::Seen);
+                add(seat, format!("seen {}", format::deg(seen.thigh)), Weight::SemiBold, Role::Seen, t, Mark::Seen);
             }
             if let Some(pain) = show.pain_from {
                 let text = format!("pain from {}", format::deg(pain));
-                add(seat_at(case, pain), text, Weight::SemiBold, Role::Pain, small, Mark::Pain);
+                add(seat_at(case, pain), text, Weight::SemiBold, Role::Pain, t, Mark::Pain);
             }
         }
-        let bar = t * if client { 1.0 } else { 1.25 };
+        let bar = t * 1.25;
         let numerals = if client { 0.0 } else { fonts::text_width("100", t * 0.85, Weight::Regular) + t * 1.0 };
         let labels =
             entries.iter().map(|e| fonts::text_width(&e.text.text, e.text.size, e.text.weight)).fold(0.0, f32::max);
@@ -195,7 +199,7 @@ impl Rail {
         let x_in = inner + outward * self.numerals;
         let x_out = x_in + outward * self.bar;
         let bar = RectPt::new(Pt::new(x_in, view.y(self.top_m)), Pt::new(x_out, view.floor()));
-        scene.fill(shapes::rect(bar.grown(1.2)), Role::BodyEdge);
+        scene.fill(shapes::rect(bar.grown(t * 0.09)), Role::BodyEdge);
         scene.fill(shapes::rect(bar), Role::NeedsHold);
         for &(top, bottom, kind) in &self.stretches {
             let piece = shapes::rect(RectPt::new(Pt::new(x_in, view.y(top)), Pt::new(x_out, view.y(bottom))));
@@ -204,7 +208,7 @@ impl Rail {
                 Reached::Drifting => {
                     scene.fill(piece.clone(), Role::DriftingBg);
                     for l in shapes::hatch(&piece, t * 0.42) {
-                        scene.line(l, 1.5, Role::Drifting);
+                        scene.line(l, t * 0.11, Role::Drifting);
                     }
                 }
                 Reached::Hold => {}
@@ -261,7 +265,7 @@ impl Rail {
         let pitch = self.entries.iter().map(|e| e.text.size).fold(t, f32::max) * 1.3;
         let (low, high) = (column.min.y + t * 0.6, column.max.y - t * 0.6);
         let heights = place::stack(&wishes, pitch, low, high);
-        let mut pain = None;
+        let (mut pain, thin) = (None, t * 0.08);
         for (e, (y, label_y)) in self.entries.iter().zip(wishes.iter().copied().zip(heights)) {
             let text_x = x_out + outward * t * 1.7;
             let anchor = if outward > 0.0 { Anchor::Start } else { Anchor::End };
@@ -270,32 +274,36 @@ impl Rail {
             let knee = Pt::new(x_out + outward * t * 0.9, label_y);
             let middle = Pt::new(f32::midpoint(x_in, x_out), y);
             match e.mark {
-                Mark::Plain => scene.line([Pt::new(x_out, y), from, knee, to], 1.0, Role::BodyEdge),
+                Mark::Plain => scene.line([Pt::new(x_out, y), from, knee, to], thin, Role::BodyEdge),
                 Mark::Now => {
                     let over = t * 0.45;
                     scene.line(
                         [Pt::new(x_in - outward * over, y), Pt::new(x_out + outward * over, y)],
-                        4.5,
+                        t * 0.34,
                         Role::Paper,
                     );
-                    scene.line([Pt::new(x_in - outward * over, y), Pt::new(x_out + outward * over, y)], 2.5, Role::Ink);
+                    scene.line(
+                        [Pt::new(x_in - outward * over, y), Pt::new(x_out + outward * over, y)],
+                        t * 0.19,
+                        Role::Ink,
+                    );
                     scene.fill(shapes::pointer(from, Pt::new(-outward, 0.0), t * 0.65, t * 0.75), Role::Ink);
-                    scene.line([from + Pt::new(outward * t * 0.3, 0.0), knee, to], 1.5, Role::Ink);
+                    scene.line([from + Pt::new(outward * t * 0.3, 0.0), knee, to], thin * 1.4, Role::Ink);
                 }
                 Mark::Goal => {
                     scene.fill(shapes::diamond(middle, t * 0.62), Role::Goal);
                     scene.fill(shapes::diamond(middle, t * 0.38), Role::Paper);
-                    scene.line([Pt::new(x_out, y), from, knee, to], 1.0, Role::Goal);
+                    scene.line([Pt::new(x_out, y), from, knee, to], thin, Role::Goal);
                 }
                 Mark::Seen => {
                     let tip = Pt::new(x_out - outward * t * 0.15, y);
                     scene.fill(shapes::pointer(tip, Pt::new(-outward, 0.0), t * 0.7, t * 0.8), Role::Seen);
-                    scene.line([from, knee, to], 1.0, Role::Seen);
+                    scene.line([from, knee, to], thin, Role::Seen);
                 }
                 Mark::Pain => {
                     scene.fill(shapes::circle(middle, t * 0.5), Role::Pain);
                     scene.fill(shapes::circle(middle, t * 0.25), Role::Paper);
-                    scene.line([Pt::new(x_out, y), from, knee, to], 1.0, Role::Pain);
+                    scene.line([Pt::new(x_out, y), from, knee, to], thin, Role::Pain);
                     pain = Some(middle);
                 }
             }

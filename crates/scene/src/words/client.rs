@@ -7,7 +7,7 @@ use plumbfold_core::{
 
 use crate::format;
 
-/// The one sentence under the client's figure; `back_bends` where the bend beyond the hip is some.
+/// The one sentence of the client's view; `bend` is the bend beyond the hip.
 #[must_use]
 pub fn sentence(b: &Balance, bend: Angle) -> String {
     match b {
@@ -15,7 +15,9 @@ pub fn sentence(b: &Balance, bend: Angle) -> String {
         Balance::Stands { standing, .. } => {
             let first = standing_line(standing);
             match back(bend) {
-                Some(more) if matches!(standing, Standing::Steady | Standing::Drifting(_)) => format!("{first} {more}"),
+                Some(more) if matches!(standing, Standing::Steady | Standing::Drifting(_)) => {
+                    format!("{}; {more}", first.trim_end_matches('.'))
+                }
                 _ => first.to_owned(),
             }
         }
@@ -36,7 +38,7 @@ pub const fn standing_line(s: &Standing) -> &'static str {
 /// That the back bends, where it does.
 #[must_use]
 pub fn back(bend: Angle) -> Option<&'static str> {
-    (bend.deg() >= 3.0).then_some("Your back bends a little here; that is normal.")
+    (bend.deg() >= 3.0).then_some("your back bends a little, and that is normal.")
 }
 
 /// Why the figure stops here.
@@ -156,7 +158,7 @@ mod tests {
         assert!(bend.deg() > 3.0);
         assert_eq!(
             sentence(&deep, bend),
-            "Your weight is over the middle of your feet. Your back bends a little here; that is normal."
+            "Your weight is over the middle of your feet; your back bends a little, and that is normal."
         );
     }
 }
