@@ -35,6 +35,7 @@ pub enum Standing {
 /// A posture with its verdict, or why there is none.
 #[derive(Clone, Copy, Debug, PartialEq)]
 #[must_use]
+#[expect(clippy::large_enum_variant, reason = "a posture is a plain value that lives on the stack, by the thousand")]
 pub enum Balance {
     /// The posture exists; `standing` says whether it holds.
     Stands {

@@ -73,7 +73,7 @@ fn least_over(parts: &[Shanks], cost: impl Fn(Angle) -> f64) -> Option<Angle> {
             let (before, after) = (k.checked_sub(1), (k < n).then_some(k + 1));
             let dips = before.is_none_or(|i| value[k] <= value[i]) && after.is_none_or(|i| value[k] <= value[i]);
             if dips {
-                offer(roots::least(&f, at(before.unwrap_or(k)), at(after.unwrap_or(k)), 1e-8));
+                offer(roots::least(f, at(before.unwrap_or(k)), at(after.unwrap_or(k)), 1e-8));
                 offer((at(k), value[k]));
             }
         }

@@ -8,7 +8,6 @@
 use crate::{
     angle::Angle,
     case::{Case, side_offset},
-    pose::legs,
     roots,
     upper::Pieces,
 };
@@ -187,11 +186,30 @@ impl<'a> Row<'a> {
         if self.most_flexion(low, high) <= limit {
             return (Ok(Shanks { low, high }), room);
         }
-        let over =
-            |s: f64| legs(self.case, Angle::from_rad(s), self.thigh).map_or(f64::INFINITY, |l| l.knee_flexion) - limit;
-        match upper_piece(over, low.rad(), high.rad()) {
+        match upper_piece(self.flexion_over(limit), low.rad(), high.rad()) {
             Ok((a, b)) => (Ok(Shanks { low: Angle::from_rad(a), high: Angle::from_rad(b) }), (b - a).min(room)),
             Err(least_over) => (Err(Refusal::Knee), -least_over),
+        }
+    }
+
+    /// How far the knee is bent over a limit at a shank angle (rad), as a difference of cosines: the
+    /// same sign as that of the angles, without an arc function.
+    fn flexion_over(&self, limit: f64) -> impl Fn(f64) -> f64 {
+        let stand = &self.case.stand;
+        let side = side_offset(&self.case.body, stand, self.thigh);
+        let shank_m = self.case.body.shank_m;
+        let level = (shank_m * shank_m - side * side).max(0.0).sqrt();
+        let (st, ct) = self.thigh.sin_cos();
+        let (sin_out, cos_out) = (stand.sin_out, stand.cos_out);
+        let (p, q, tau) = (self.p, self.q, self.tau);
+        let cos_limit = limit.cos();
+        move |shank: f64| {
+            let (ss, cs) = shank.sin_cos();
+            let dz = p - q * ss;
+            let across = (tau * tau - dz * dz).max(0.0).sqrt();
+            let dot = across * (ct * level * cs - st * (level * ss * cos_out - side * sin_out))
+                + dz * (level * ss * sin_out + side * cos_out);
+            cos_limit - dot / (shank_m * tau)
         }
     }
 
@@ -355,9 +373,9 @@ impl Reaching {
 }
 
 /// Of `low..=high`, the upper piece on which `over <= 0`, ends bracketed to 1e-12 rad; else the
-/// least of `over` seen. Sampled every 2°: flexion turns at most once over an interval.
+/// least of `over` seen. Sampled every 3°: flexion turns at most once over an interval.
 fn upper_piece(over: impl Fn(f64) -> f64, low: f64, high: f64) -> Result<(f64, f64), f64> {
-    let n = (((high - low).to_degrees() / 2.0).ceil() as usize).clamp(1, 90);
+    let n = (((high - low).to_degrees() / 3.0).ceil() as usize).clamp(1, 60);
     let at = |k: usize| if k == n { high } else { low + (high - low) * k as f64 / n as f64 };
     let mut least = f64::INFINITY;
     let mut top: Option<f64> = None;
