@@ -93,7 +93,7 @@ impl App {
             return;
         }
         Panel::top("bar").frame(panel(12)).resizable(false).show(ui, |ui| panels::top::show(ui, state, theme, out));
-        Panel::left("measured").frame(panel(12)).resizable(false).exact_size(278.0).show(ui, |ui| {
+        Panel::left("measured").frame(panel(12)).resizable(false).exact_size(300.0).show(ui, |ui| {
             ScrollArea::vertical().auto_shrink(false).show(ui, |ui| {
                 panels::measured::show(ui, &panels::measured::Measured { state, results, theme }, out);
             });
@@ -106,7 +106,7 @@ impl App {
             return;
         };
         let now = results.at(state.view.depth_deg);
-        Panel::right("meaning").frame(panel(12)).resizable(false).exact_size(288.0).show(ui, |ui| {
+        Panel::right("meaning").frame(panel(12)).resizable(false).exact_size(296.0).show(ui, |ui| {
             ScrollArea::vertical().auto_shrink(false).show(ui, |ui| {
                 let m = panels::meaning::Meaning { state, results, now: &now, theme };
                 panels::meaning::show(ui, &m, out);

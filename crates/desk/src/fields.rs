@@ -7,7 +7,7 @@
 
 use std::cell::RefCell;
 
-use egui::{DragValue, Response, Sense, Stroke, Ui, vec2};
+use egui::{DragValue, Response, Stroke, Ui, vec2};
 use plumbfold_core::bounds::Bounds;
 use plumbfold_scene::{Role, Theme, format};
 
@@ -224,13 +224,21 @@ pub fn error_under(ui: &mut Ui, state: &State, theme: Theme, entry: Entry) {
 }
 
 /// Width of the names at the left of fields.
-pub const NAME_WIDTH: f32 = 96.0;
+pub const NAME_WIDTH: f32 = 92.0;
 
 /// A name at the left of a field.
 pub fn name(ui: &mut Ui, text: &str) -> Response {
-    let (rect, response) = ui.allocate_exact_size(vec2(NAME_WIDTH, 22.0), Sense::hover());
-    ui.put(rect, egui::Label::new(text).truncate().halign(egui::Align::LEFT));
-    response
+    left(ui, NAME_WIDTH, |ui| ui.add(egui::Label::new(text).truncate()))
+}
+
+/// A cell of a fixed width with its content at the left.
+pub fn left(ui: &mut Ui, width: f32, content: impl FnOnce(&mut Ui) -> Response) -> Response {
+    let layout = egui::Layout::left_to_right(egui::Align::Center);
+    ui.allocate_ui_with_layout(vec2(width, 22.0), layout, |ui| {
+        ui.set_min_width(width);
+        content(ui)
+    })
+    .inner
 }
 
 /// A dashed frame: what stands inside is not measured.

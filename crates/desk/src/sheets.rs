@@ -2,8 +2,12 @@
 
 use std::{fs, path::Path};
 
-use plumbfold_core::{Angle, Step};
-use plumbfold_scene::{Scene, Theme};
+use plumbfold_core::{Angle, Step, posture};
+use plumbfold_scene::{
+    Scene, Theme,
+    figure::{Outline, Show},
+    page::{Page, sheet_page},
+};
 
 use crate::{
     computed::{Computed, Results},
@@ -33,21 +37,39 @@ pub fn png_of(doc: &Document, results: &Results, thigh_deg: f64) -> Result<Vec<u
     plumbfold_sheet::png(&svg, WIDTH_PX).map_err(|e| e.to_string())
 }
 
-/// The page as a scene.
+/// The page as a scene: the posture at a depth, with the outline of average lengths behind it.
 #[must_use]
-pub fn scene(_doc: &Document, results: &Results, thigh_deg: f64) -> Scene {
+pub fn scene(doc: &Document, results: &Results, thigh_deg: f64) -> Scene {
+    let visit = doc.visit();
     let step = Step::at(&results.study.case, Angle::from_deg(thigh_deg));
-    let show = plumbfold_scene::figure::Show::plain(&results.study, step.thigh, &step.balance);
-    plumbfold_scene::figure::figure(
-        &show,
-        plumbfold_scene::Size::new(1600.0, 1200.0),
-        &plumbfold_scene::figure::Look::sheet(22.0),
-    )
-    .0
+    let average = posture(&results.average.case, step.thigh);
+    let outline = average.held().filter(|_| step.balance.posture().is_some()).map(|posture| Outline {
+        case: &results.average.case,
+        posture,
+        what: "average lengths for this stature, same ranges",
+    });
+    let pain = doc.task().seen.and_then(|s| s.pain_from_thigh_deg);
+    sheet_page(&Page {
+        code: doc.client.code.as_str(),
+        date: &visit.date.to_string(),
+        visit: doc.visit + 1,
+        task: &doc.task().name,
+        show: Show {
+            study: &results.study,
+            thigh: step.thigh,
+            now: &step.balance,
+            straightened: None,
+            outline,
+            pain_from: pain.map(Angle::from_deg),
+            deepest: Angle::from_deg(results.deepest_deg),
+            note: None,
+        },
+        notices: &results.notices,
+    })
 }
 
-/// Marks the demo sheet as ours: the picture is drawn the same every time, so the file that may be
-/// replaced is one whose first bytes are a PNG header and that is no larger than a sheet can be.
+/// Writes the demo sheet over nothing but an earlier one: what may be replaced is a PNG as wide as
+/// our sheets.
 ///
 /// # Errors
 /// A sentence where something else lies there or the disk refuses.

@@ -33,6 +33,14 @@ pub enum Command {
         #[arg(long)]
         json: bool,
     },
+    /// Print what runs out first, what it would take, and what the seen squat tells.
+    Reasons {
+        #[command(flatten)]
+        of: Selection,
+        /// Print one JSON object: angles in degrees, moments in N·m.
+        #[arg(long)]
+        json: bool,
+    },
     /// Draw an annotated figure of a client.
     Sheet {
         #[command(flatten)]

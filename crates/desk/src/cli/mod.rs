@@ -9,6 +9,7 @@ mod check;
 mod choose;
 mod figures;
 mod figures_text;
+mod reasons;
 mod sheet;
 #[cfg(test)]
 mod tests;
@@ -98,6 +99,10 @@ pub fn run(args: impl IntoIterator<Item = OsString>, out: &mut dyn Write, err: &
         Some(Command::Figures { of, json }) => {
             let form = if json { figures::Form::Json } else { figures::Form::Text };
             figures::command(&of, form).map(|text| Outcome::Done(print(&text, out, err)))
+        }
+        Some(Command::Reasons { of, json }) => {
+            let form = if json { figures::Form::Json } else { figures::Form::Text };
+            reasons::command(&of, form).map(|text| Outcome::Done(print(&text, out, err)))
         }
         Some(Command::Check { files }) => Ok(Outcome::Done(check::command(&files, out, err))),
         Some(Command::Sheet { of, output }) => sheet::command(&of, output).map(Outcome::Sheet),

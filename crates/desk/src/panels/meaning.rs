@@ -10,6 +10,7 @@ use plumbfold_scene::{
 use crate::{
     action::{Action, ViewChange},
     computed::Results,
+    fields::left,
     painter::{color, font},
     state::State,
 };
@@ -143,8 +144,7 @@ fn demands(ui: &mut Ui, m: &Meaning<'_>) {
         ("Ankle, each", r.moments_nm.ankle, r.effort.ankle, false, Role::Ankle),
     ] {
         ui.horizontal(|ui| {
-            let (rect, _) = ui.allocate_exact_size(vec2(74.0, 20.0), Sense::hover());
-            ui.put(rect, egui::Label::new(name).halign(egui::Align::LEFT));
+            left(ui, 74.0, |ui| ui.label(name));
             bar(ui, (nm / peak).clamp(0.0, 1.0) as f32, role, stretched, m.theme);
             ui.label(RichText::new(format::number(nm, 0)).font(font(13.0, Weight::SemiBold)));
             ui.label(RichText::new(clinician::effort(effort)).small().color(color(m.theme, Role::InkSoft)));

@@ -33,7 +33,7 @@ pub fn show(ui: &mut Ui, state: &State, results: &Results, theme: Theme, out: &m
         charts.push(plots::demands(&results.study, now));
     }
     let gap = 10.0;
-    let w = (ui.available_width() - gap * (charts.len() as f32 - 1.0)) / charts.len() as f32;
+    let w = ((ui.available_width() - gap * (charts.len() as f32 - 1.0)) / charts.len() as f32).floor() - 2.0;
     ui.horizontal_top(|ui| {
         ui.spacing_mut().item_spacing.x = gap;
         for c in &charts {
@@ -75,6 +75,7 @@ fn one(ui: &mut Ui, c: &Chart, size: egui::Vec2, theme: Theme, out: &mut Vec<Act
         .allow_double_click_reset(false)
         .set_margin_fraction(vec2(0.0, 0.0))
         .show_crosshair(false)
+        .grid_spacing(12.0..=40.0)
         .label_formatter(|_| None)
         .x_grid_spacer(grid(&c.x, 6))
         .y_grid_spacer(grid(&c.y, 4))

@@ -8,6 +8,7 @@ pub mod client;
 pub mod clinician;
 pub mod names;
 pub mod notices;
+pub mod why;
 
 pub use notices::STANDING_CAUTION as CAUTION;
 
@@ -25,9 +26,11 @@ pub fn breaks_never_list(sentence: &str) -> Option<&'static str> {
     if low.contains(" : ") {
         return Some("ratio");
     }
-    let words = || low.split(|c: char| c.is_whitespace() || ",.;()–-".contains(c));
+    // the start of any run of letters counts, whatever stands before it
+    let words = || low.split(|c: char| !c.is_alphanumeric());
     NEVER.into_iter().find(|never| {
-        words().any(|w| w.starts_with(never)) || (never.len() <= 3 && low.contains("n·m") && *never == "n·m")
+        let sign = never.chars().any(|c| !c.is_alphanumeric());
+        if sign { low.contains(never) } else { words().any(|w| w.starts_with(never)) }
     })
 }
 
@@ -59,6 +62,8 @@ mod tests {
             ("the limit is reached", "limit"),
             ("it tips back", "tip"),
             ("about 58 %", "%"),
+            ("about 58%", "%"),
+            ("it’s “wrong”", "wrong"),
             ("57 N·m", "n·m"),
             ("arms 2.1 : 1", "ratio"),
             ("Only here", "only"),
