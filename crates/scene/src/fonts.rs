@@ -1,6 +1,6 @@
 //! The one bundled family, Inter, and its measures, by the shaper the window's text uses too.
 
-use std::sync::LazyLock;
+use std::{cell::RefCell, collections::HashMap, sync::LazyLock};
 
 use harfrust::{Direction, FontRef, ShapeOptions, ShapePlan, ShaperData, UnicodeBuffer, script};
 use skrifa::MetadataProvider;
@@ -59,16 +59,42 @@ fn face(weight: Weight) -> Option<&'static Face> {
 }
 
 /// Width of one line of text in page units, kerning and ligatures included.
+///
+/// Remembered per thread, since a layout asks for the same few words many times.
 #[must_use]
 pub fn text_width(text: &str, size: f32, weight: Weight) -> f32 {
-    let Some(face) = face(weight) else { return text.chars().count() as f32 * size };
+    let em = KNOWN.with_borrow_mut(|known| {
+        let of_weight = &mut known[weight as usize];
+        if let Some(&em) = of_weight.get(text) {
+            return em;
+        }
+        if of_weight.len() >= REMEMBERED {
+            of_weight.clear();
+        }
+        let em = shaped_width(text, weight);
+        of_weight.insert(text.to_owned(), em);
+        em
+    });
+    em * size
+}
+
+/// Words remembered before starting over.
+const REMEMBERED: usize = 4096;
+
+thread_local! {
+    static KNOWN: RefCell<[HashMap<String, f32>; 2]> = RefCell::default();
+}
+
+/// Width in em by the shaper.
+fn shaped_width(text: &str, weight: Weight) -> f32 {
+    let Some(face) = face(weight) else { return text.chars().count() as f32 };
     let mut buffer = UnicodeBuffer::new();
     buffer.push_str(text);
     buffer.set_direction(Direction::LeftToRight);
     buffer.set_script(script::LATIN);
     let shaped = face.data.shaper(&face.font).build().shape(buffer, ShapeOptions::new().plan(Some(&face.plan)));
     let units: i64 = shaped.glyph_positions().iter().map(|p| i64::from(p.x_advance)).sum();
-    units as f32 * size / face.per_em
+    units as f32 / face.per_em
 }
 
 /// Whether the bundled family has a glyph for every character.

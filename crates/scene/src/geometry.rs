@@ -301,6 +301,28 @@ impl Convex {
     }
 }
 
+impl Convex {
+    /// The part with y of at most `low`: what stands above a line across the page.
+    #[must_use]
+    pub fn above(&self, low: f32) -> Self {
+        if self.0.iter().all(|p| p.y <= low) {
+            return self.clone();
+        }
+        let n = self.0.len();
+        let mut kept = Vec::with_capacity(n + 2);
+        for i in 0..n {
+            let (a, b) = (self.0[i], self.0[(i + 1) % n]);
+            if a.y <= low {
+                kept.push(a);
+            }
+            if (a.y - low) * (b.y - low) < 0.0 {
+                kept.push(a.toward(b, (low - a.y) / (b.y - a.y)));
+            }
+        }
+        Self::hull(kept)
+    }
+}
+
 /// The rectangle around some points; `None` for none.
 #[must_use]
 pub fn bounds_of(points: &[Pt]) -> Option<RectPt> {
@@ -331,6 +353,14 @@ mod tests {
     fn points_on_a_line_or_not_finite_give_nothing() {
         assert!(Convex::hull([Pt::new(0.0, 0.0), Pt::new(1.0, 1.0), Pt::new(2.0, 2.0)]).is_empty());
         assert!(Convex::hull([Pt::new(0.0, 0.0), Pt::new(f32::NAN, 1.0), Pt::new(2.0, 2.0)]).is_empty());
+    }
+
+    #[test]
+    fn what_stands_above_a_line_is_kept() {
+        let square = Convex::hull(RectPt::at(0.0, 0.0, 10.0, 10.0).corners());
+        assert_eq!(square.above(4.0).bounds(), Some(RectPt::at(0.0, 0.0, 10.0, 4.0)));
+        assert_eq!(square.above(20.0), square);
+        assert!(square.above(-1.0).is_empty());
     }
 
     #[test]

@@ -341,7 +341,7 @@ const FIRST: f32 = 150.0;
 /// Left edge of the second.
 const SECOND: f32 = 166.0;
 /// Ends of the bars of work required.
-const BAR: (f32, f32) = (76.0, 160.0);
+const BAR: (f32, f32) = (74.0, 148.0);
 
 #[cfg(test)]
 mod tests {

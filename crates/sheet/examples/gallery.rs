@@ -78,6 +78,10 @@ fn main() -> Result<(), Box<dyn Error>> {
             let desk = figure(&full, Size::new(746.0, 560.0), &Look::desk(13.0, Facing::Right)).0;
             write(&format!("{name}-{deg}"), &desk, Theme::light(), 1119)?;
         }
+        let thigh = Angle::from_deg(90.0);
+        let now = posture(&case, thigh);
+        let large = figure(&show(&s, &now, thigh), Size::new(1180.0, 760.0), &Look::desk(14.0, Facing::Right)).0;
+        write(&format!("{name}-contrast"), &large, Theme::high_contrast(), 1180)?;
         let thigh = Angle::from_deg(75.0);
         let now = posture(&case, thigh);
         let page = Page {

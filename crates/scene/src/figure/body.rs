@@ -36,7 +36,8 @@ impl Part {
             .discs
             .iter()
             .flat_map(|&(p, r)| shapes::arc(view.to_page(p), view.length(r) + grown, 0.0, std::f32::consts::TAU));
-        Convex::hull(points)
+        // arms that hang may reach through the floor in a deep squat; what is under it is not drawn
+        Convex::hull(points).above(view.floor() + grown)
     }
 }
 

@@ -37,12 +37,13 @@ pub(super) struct Layout {
     pub text: f32,
 }
 
-/// Least x, greatest x, greatest height and foremost knee of a figure, m.
+/// Least x, greatest x, greatest height of a figure, m.
 #[derive(Clone, Copy, Debug)]
 struct Extent {
     back: f64,
     front: f64,
     top: f64,
+    /// Foremost knee or centre of mass.
     knee: f64,
 }
 
@@ -68,7 +69,7 @@ impl Extent {
             (j.heel, 0.0),
         ];
         let body = discs.into_iter().fold(self, |e, (q, r)| e.with(q.x, q.y, r * s));
-        let seen = Self { knee: body.knee.max(j.knee.x), ..body.with(p.com.x, p.com.y, 0.0) };
+        let seen = Self { knee: body.knee.max(j.knee.x).max(p.com.x), ..body.with(p.com.x, p.com.y, 0.0) };
         match gear::extent(case, p) {
             Some((l, r, t)) => Self { back: seen.back.min(l), front: seen.front.max(r), top: seen.top.max(t), ..seen },
             None => seen,

@@ -64,16 +64,17 @@ pub(super) fn extent(case: &Case, p: &Posture) -> Option<(f64, f64, f64)> {
     Some((at.x - r, at.x + r, at.y + r))
 }
 
-fn edged(scene: &mut Scene, grow: impl Fn(f32) -> Convex, width: f32, fill: Role) {
-    scene.fill(grow(width), Role::BodyEdge);
-    scene.fill(grow(0.0), fill);
+/// An area with its edge, so far as it is above `low`.
+fn edged(scene: &mut Scene, low: f32, grow: impl Fn(f32) -> Convex, width: f32, fill: Role) {
+    scene.fill(grow(width).above(low), Role::BodyEdge);
+    scene.fill(grow(0.0).above(low), fill);
 }
 
 /// What lies behind the body: discs of a bar.
 pub(super) fn behind(scene: &mut Scene, view: &View, case: &Case, p: &Posture, edge: f32) {
     if let Held::Bar(Some(r)) = held(case.task().placement, case.task().load_kg) {
         let at = view.to_page(p.joints.load);
-        edged(scene, |g| shapes::circle(at, view.length(r) + g), edge, Role::Panel);
+        edged(scene, view.floor(), |g| shapes::circle(at, view.length(r) + g), edge, Role::Panel);
         for share in [0.88, 0.30] {
             scene.line(shapes::ring(at, view.length(r * share)), 1.0, Role::Gear);
         }
@@ -85,9 +86,10 @@ pub(super) fn before(scene: &mut Scene, view: &View, case: &Case, p: &Posture, e
     let at = view.to_page(p.joints.load);
     match held(case.task().placement, case.task().load_kg) {
         Held::Nothing => {}
-        Held::Bar(_) => edged(scene, |g| shapes::circle(at, view.length(BAR_M) + g), edge, Role::Gear),
+        Held::Bar(_) => edged(scene, view.floor(), |g| shapes::circle(at, view.length(BAR_M) + g), edge, Role::Gear),
         Held::Plate(r) => edged(
             scene,
+            view.floor(),
             |g| {
                 let (half, thick) = (view.length(r), view.length(0.018) + g);
                 shapes::capsule(at - Pt::new(0.0, half - thick), thick, at + Pt::new(0.0, half - thick), thick)
@@ -103,10 +105,10 @@ pub(super) fn before(scene: &mut Scene, view: &View, case: &Case, p: &Posture, e
                 RectPt::at(at.x + half - thick, at.y - view.length(r), thick, view.length(2.0 * r)),
             ];
             for piece in pieces {
-                scene.fill(shapes::rounded(piece.grown(edge), edge * 2.0), Role::BodyEdge);
+                scene.fill(shapes::rounded(piece.grown(edge), edge * 2.0).above(view.floor()), Role::BodyEdge);
             }
             for piece in pieces {
-                scene.fill(shapes::rounded(piece, edge * 2.0), Role::Gear);
+                scene.fill(shapes::rounded(piece, edge * 2.0).above(view.floor()), Role::Gear);
             }
         }
         Held::Bell(r) => {
@@ -114,7 +116,7 @@ pub(super) fn before(scene: &mut Scene, view: &View, case: &Case, p: &Posture, e
             let top = at - Pt::new(0.0, radius * 0.9);
             scene.line(shapes::ring(top, radius * 0.55), radius * 0.28 + edge, Role::BodyEdge);
             scene.line(shapes::ring(top, radius * 0.55), radius * 0.28, Role::Gear);
-            edged(scene, |g| shapes::circle(at, radius + g), edge, Role::Gear);
+            edged(scene, view.floor(), |g| shapes::circle(at, radius + g), edge, Role::Gear);
         }
     }
 }

@@ -36,7 +36,7 @@ pub(super) fn draw(scene: &mut Scene, show: &Show<'_>, view: &View, p: &Posture,
         (j.shoulder, large, Role::Back, used.lean),
     ];
     for (at, radius, role, full) in joints {
-        let at = view.to_page(at);
+        let at = view.to_page_above_floor(at);
         let edge = if annotated { role } else { Role::BodyEdge };
         ring(scene, at, radius, edge, (full && annotated).then_some(role));
         placer.take(RectPt { min: at, max: at }.grown(radius));
@@ -45,7 +45,7 @@ pub(super) fn draw(scene: &mut Scene, show: &Show<'_>, view: &View, p: &Posture,
         return;
     }
     let heel = view.to_page(j.heel) + Pt::new(-view.forward() * t * 0.55, -t * 0.1);
-    let load = view.to_page(j.load);
+    let load = view.to_page_above_floor(j.load);
     if annotated {
         for at in [heel, load] {
             ring(scene, at, large * 0.62, Role::Gear, None);
@@ -66,12 +66,19 @@ pub(super) fn draw(scene: &mut Scene, show: &Show<'_>, view: &View, p: &Posture,
             track: None,
         });
     };
-    let hip = view.to_page(j.hip);
+    let hip = view.to_page_above_floor(j.hip);
     grip(Handle::Hip, hip, "Depth, hip", p.thigh.deg(), (0.0, show.deepest.deg()), Unit::Deg);
-    grip(Handle::Knee, view.to_page(j.knee), "Shank, knee", p.shank.deg(), (-10.0, highest), Unit::Deg);
+    grip(Handle::Knee, view.to_page_above_floor(j.knee), "Shank, knee", p.shank.deg(), (-10.0, highest), Unit::Deg);
     if annotated {
         let lean = (-5.0, LEAN_MAX.deg());
-        grip(Handle::Shoulder, view.to_page(j.shoulder), "Trunk lean, shoulder", p.trunk.deg(), lean, Unit::Deg);
+        grip(
+            Handle::Shoulder,
+            view.to_page_above_floor(j.shoulder),
+            "Trunk lean, shoulder",
+            p.trunk.deg(),
+            lean,
+            Unit::Deg,
+        );
         let (raise, kg) = (bounds(Field::HeelRaise), bounds(Field::Load));
         let task = case.task();
         grip(Handle::Heel, heel, "Heel wedge", task.heel_raise_m * 1000.0, (raise.min, raise.max), Unit::Mm);

@@ -219,7 +219,9 @@ pub fn figure(show: &Show<'_>, area: Size, look: &Look) -> (Scene, View) {
     let layout = Layout::new(show, area, look);
     let view = layout.view;
     let t = look.text;
-    heading(&mut scene, &layout);
+    for label in &layout.heading {
+        scene.text(label.clone());
+    }
     let Some(p) = show.shown() else {
         return (scene, view);
     };
@@ -294,13 +296,26 @@ pub fn figure(show: &Show<'_>, area: Size, look: &Look) -> (Scene, View) {
             scene.text(label);
         }
     }
+    captions(&mut scene, &layout);
     (scene, view)
 }
 
-/// Title, meaning and captions.
-fn heading(scene: &mut Scene, layout: &Layout) {
-    for label in layout.heading.iter().chain(&layout.captions) {
-        scene.text(label.clone());
+/// Captions in their corner, each line moved down past anything that already stands there.
+fn captions(scene: &mut Scene, layout: &Layout) {
+    let mut down = 0.0;
+    for caption in &layout.captions {
+        let mut label = caption.clone();
+        label.baseline.y += down;
+        while let Some(under) =
+            scene.labels().map(Label::bounds).filter(|b| b.meets(&label.bounds())).reduce(|a, b| a.around(&b))
+        {
+            let step = under.max.y + 1.0 - label.bounds().min.y;
+            label.baseline.y += step;
+            down += step;
+        }
+        if RectPt::page(scene.size).holds(&label.bounds()) {
+            scene.text(label);
+        }
     }
 }
 
@@ -353,9 +368,9 @@ fn behind(scene: &mut Scene, show: &Show<'_>, view: &View, edge: f32) {
 /// Bone lines of legs and trunk, on which the angles are read.
 fn spine(scene: &mut Scene, view: &View, p: &Posture, edge: f32) {
     let j = &p.joints;
-    let legs = [j.ankle, j.knee, j.hip].map(|q| view.to_page(q));
+    let legs = [j.ankle, j.knee, j.hip].map(|q| view.to_page_above_floor(q));
     scene.line(legs, edge * 0.6, Role::BodyEdge);
-    let back = [j.hip, j.lumbosacral, j.shoulder].map(|q| view.to_page(q));
+    let back = [j.hip, j.lumbosacral, j.shoulder].map(|q| view.to_page_above_floor(q));
     scene.line(back, edge * 0.9, Role::Back);
     scene.fill(shapes::circle(view.to_page(j.lumbosacral), edge * 1.7), Role::Back);
 }

@@ -44,6 +44,13 @@ impl View {
         Pt::new(self.x(p.x), self.y(p.y))
     }
 
+    /// The same, but not under the floor: where a handle is drawn.
+    #[must_use]
+    pub fn to_page_above_floor(&self, p: Point) -> Pt {
+        let at = self.to_page(p);
+        Pt::new(at.x, at.y.min(self.floor()))
+    }
+
     /// A place on the page in the world, m.
     #[must_use]
     pub fn to_world(&self, p: Pt) -> Point {
@@ -99,8 +106,8 @@ mod tests {
 
     #[test]
     fn facing_left_mirrors_about_the_origin() {
-        let (r, l) = (Facing::Right, Facing::Left).into();
-        let [a, b] = [r, l].map(|f| View::new(Pt::new(300.0, 500.0), 240.0, f).to_page(Point::new(0.2, 0.5)));
+        let [a, b] = [Facing::Right, Facing::Left]
+            .map(|f| View::new(Pt::new(300.0, 500.0), 240.0, f).to_page(Point::new(0.2, 0.5)));
         assert!((a.x - 300.0 + b.x - 300.0).abs() < 1e-4 && (a.y - b.y).abs() < 1e-6 && a.x > b.x);
     }
 }
