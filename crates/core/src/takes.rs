@@ -245,7 +245,8 @@ impl Case {
 
 /// Toe-out after widening: the larger of the present and the present with half a degree a
 /// centimetre, capped at 35°.
-fn toe_out_with(present: Angle, widening_cm: f64) -> Angle {
+#[must_use]
+pub fn toe_out_with(present: Angle, widening_cm: f64) -> Angle {
     present.max(Angle::from_deg((present.deg() + TOE_OUT_PER_CM * widening_cm).min(TOE_OUT_TO)))
 }
 

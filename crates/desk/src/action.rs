@@ -2,8 +2,8 @@
 
 use std::path::PathBuf;
 
-use plumbfold_core::{Angle, Placement, Scope, SegmentTable, Sex};
-use plumbfold_records::{Bend, Client, Problem, Rule, StoppedBy};
+use plumbfold_core::{Angle, Placement, Scope, SegmentTable, Sex, takes::Change};
+use plumbfold_records::{Bend, Client, Felt, PainAt, Problem, Rule, StoppedBy};
 use plumbfold_scene::theme::Palette;
 
 use crate::{command::Command, entry::Entry};
@@ -88,6 +88,12 @@ pub enum Edit {
     AddTask(String),
     /// The present task removed; the last one stays.
     RemoveTask,
+    /// A task after the present one with changes made, as a person sets them.
+    Keep(Vec<Change>),
+    /// How the set-up felt.
+    Felt(Option<Felt>),
+    /// Which joint hurts.
+    PainAt(Option<PainAt>),
 }
 
 /// A change of the view: neither saved nor undone.
@@ -97,6 +103,8 @@ pub enum ViewChange {
     Depth(f64),
     /// The trunk held at this lean; none: as balance needs it.
     Straighten(Option<Angle>),
+    /// Changes tried on the figure; none: as set up.
+    Try(Option<Vec<Change>>),
     /// More lengths shown or not.
     MoreLengths,
     /// More choices shown or not.

@@ -4,6 +4,7 @@
 use std::sync::mpsc::{Receiver, Sender, channel};
 
 use egui::{CentralPanel, Context, Frame, Margin, Panel, ScrollArea, Ui};
+use plumbfold_core::{Angle, Step};
 use plumbfold_records::Client;
 use plumbfold_scene::Role;
 
@@ -105,19 +106,23 @@ impl App {
             });
             return;
         };
-        let now = results.at(state.view.depth_deg);
+        let tried = state.view.trying.as_ref().and_then(|changes| results.tried(changes));
+        let (shown, now) = match &tried {
+            Some(study) => (study, Step::at(&study.case, Angle::from_deg(state.view.depth_deg))),
+            None => (&results.study, results.at(state.view.depth_deg)),
+        };
         Panel::right("meaning").frame(panel(12)).resizable(false).exact_size(296.0).show(ui, |ui| {
             ScrollArea::vertical().auto_shrink(false).show(ui, |ui| {
-                let m = panels::meaning::Meaning { state, results, now: &now, theme };
+                let m = panels::meaning::Meaning { state, results, shown, now: &now, theme };
                 panels::meaning::show(ui, &m, out);
             });
         });
         let paper = Frame::new().fill(color(theme, Role::Paper)).inner_margin(Margin::symmetric(10, 6));
         Panel::bottom("plots").frame(paper).resizable(false).show(ui, |ui| {
-            panels::plots::show(ui, state, results, theme, out);
+            panels::plots::show(ui, &panels::plots::Plots { state, results, shown, now: &now, theme }, out);
         });
         CentralPanel::default().frame(paper).show(ui, |ui| {
-            panels::figure::show(ui, &panels::figure::Desk { state, results, now: &now, theme }, out);
+            panels::figure::show(ui, &panels::figure::Desk { state, results, shown, now: &now, theme }, out);
         });
     }
 

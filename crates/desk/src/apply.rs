@@ -4,17 +4,20 @@
 use std::path::PathBuf;
 
 use plumbfold_core::{
+    Angle, Placement,
     bounds::{Field, bounds},
     measures::{Sex, Sides},
+    tables,
+    takes::{self, Change, Kind},
 };
 use plumbfold_records::{Ankle, Client, Code, Hip, Visit};
-use plumbfold_scene::theme::Palette;
+use plumbfold_scene::{theme::Palette, words::why};
 
 use crate::{
     action::{Action, AnkleWay, Answer, Arrived, Ask, Edit, Effect, HipWay, Over, Step, Then, ViewChange},
     command::Command,
     document::Document,
-    entry::UNSEEN,
+    entry::{UNSEEN, bend_deg},
     state::{Dialog, Message, State},
 };
 
@@ -51,6 +54,7 @@ fn edit(state: &mut State, change: Edit, step: Step) {
     if state.doc == before {
         return;
     }
+    state.view.trying = None;
     if goes_elsewhere {
         state.view.depth_deg = state.doc.task().goal_thigh_deg;
         state.view.straighten = None;
@@ -145,6 +149,13 @@ fn edit_document(doc: &mut Document, change: Edit) -> Result<(), String> {
             doc.visit_mut().tasks.insert(at, task);
             doc.task = at;
         }
+        Edit::Keep(changes) => keep(doc, &changes),
+        Edit::Felt(felt) => doc.task_mut().felt = felt,
+        Edit::PainAt(joint) => {
+            if let Some(seen) = &mut doc.task_mut().seen {
+                seen.pain_at = joint;
+            }
+        }
         Edit::RemoveTask => {
             if doc.visit().tasks.len() > 1 {
                 let at = doc.task;
@@ -154,6 +165,60 @@ fn edit_document(doc: &mut Document, change: Edit) -> Result<(), String> {
         }
     }
     Ok(())
+}
+
+/// A task after the present one with changes made, as a person sets them: wedges up to the next
+/// 5 mm, stances to the next centimetre, counterweights to the next half kilogram. Ranges gained in
+/// weeks are no set-up and are left out.
+fn keep(doc: &mut Document, changes: &[Change]) {
+    let mut task = doc.task().clone();
+    let under_hips_cm = 200.0 * tables::HIP_HALF_SPACING * doc.visit().stature_cm / 100.0;
+    let up = |v: f64, to: f64| ((v / to - 1e-6).ceil() * to).max(0.0);
+    let mut names = Vec::new();
+    for c in changes {
+        match c.kind {
+            Kind::HeelRaise => {
+                let most = bounds(Field::HeelRaise).max;
+                task.heel_raise_mm = (task.heel_raise_mm + up(c.amount, 5.0)).min(most);
+            }
+            Kind::WiderStance => {
+                let now = task.stance_width_cm.unwrap_or(under_hips_cm);
+                let wide = up(now + c.amount, 1.0);
+                task.toe_out_deg = takes::toe_out_with(Angle::from_deg(task.toe_out_deg), wide - now).deg();
+                task.toe_out_deg = (task.toe_out_deg * 10.0).round() / 10.0;
+                task.stance_width_cm = Some(wide);
+            }
+            Kind::Counterweight => {
+                task.placement = Placement::ArmsForward;
+                task.load_kg = up(c.amount, 0.5);
+            }
+            Kind::Placement(p) => {
+                task.placement = p;
+                if p == Placement::ArmsCrossed {
+                    task.load_kg = 0.0;
+                }
+            }
+            Kind::Bend => {
+                let most = bounds(Field::Bend).max;
+                task.bend = plumbfold_records::Bend::Degrees((bend_deg(task.bend) + up(c.amount, 1.0)).min(most));
+            }
+            Kind::Lean => {
+                let most = bounds(Field::Lean).max;
+                task.lean_limit_deg = task.lean_limit_deg.map(|l| (l + up(c.amount, 1.0)).min(most));
+            }
+            Kind::Ankle | Kind::Hip => continue,
+        }
+        names.push(why::kind(c.kind).to_lowercase());
+    }
+    if names.is_empty() {
+        return;
+    }
+    task.name = free_name(doc.visit(), &names.join(" and "));
+    task.seen = None;
+    task.felt = None;
+    let at = doc.task + 1;
+    doc.visit_mut().tasks.insert(at, task);
+    doc.task = at;
 }
 
 /// A task name that is not taken at this visit.
@@ -179,6 +244,11 @@ fn view(state: &mut State, change: ViewChange) {
             v.straighten = lean;
             v.playing = false;
             v.dragged = true;
+        }
+        ViewChange::Try(changes) => {
+            v.trying = changes;
+            v.straighten = None;
+            v.matching = false;
         }
         ViewChange::MoreLengths => v.more_lengths = !v.more_lengths,
         ViewChange::MoreChoices => v.more_choices = !v.more_choices,
@@ -239,10 +309,11 @@ fn run(state: &mut State, command: Command) -> Vec<Effect> {
         }
         Command::MatchSeen => {
             state.view.matching = !state.view.matching;
+            state.view.trying = None;
             state.view.playing = false;
             state.view.straighten = None;
         }
-        Command::Outline => state.view.outline = !state.view.outline,
+        Command::Outline => state.view.outline = state.view.outline.next(),
         Command::Face => state.view.facing_left = !state.view.facing_left,
         Command::Plots => state.view.plots = !state.view.plots,
         Command::Palette => {

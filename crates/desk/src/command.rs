@@ -79,9 +79,11 @@ impl Command {
             Self::MatchSeen => {
                 ("Match what I saw", "Drag the figure onto the squat you saw", KeyboardShortcut::new(NONE, Key::F2))
             }
-            Self::Outline => {
-                ("Outline", "Average lengths for this stature behind the figure", KeyboardShortcut::new(NONE, Key::F3))
-            }
+            Self::Outline => (
+                "Outline",
+                "Behind the figure: average lengths, then usual ranges, then nothing",
+                KeyboardShortcut::new(NONE, Key::F3),
+            ),
             Self::Face => ("Face the other way", "Turn the figure round", KeyboardShortcut::new(NONE, Key::F4)),
             Self::Plots => ("Plots", "Show or fold the plots", KeyboardShortcut::new(NONE, Key::F7)),
             Self::Palette => ("Light or dark", "Light, dark, high contrast", KeyboardShortcut::new(NONE, Key::F6)),

@@ -1,8 +1,10 @@
 //! What follows from the document, computed once and kept while it holds.
 
 use plumbfold_core::{
-    Angle, Balance, Case, Invalid, Measures, Notice, Posture, Standing, Step, Study, Task, pose, standing, study,
+    Angle, Balance, Case, Invalid, Measures, Notice, Posture, Reasons, Standing, Step, Study, Task, map::Map, pose,
+    reasons, standing, stops::with_usual_ranges, study, takes::Change,
 };
+use plumbfold_scene::map::map_of;
 
 use crate::document::Document;
 
@@ -22,6 +24,12 @@ pub struct Results {
     pub study: Study,
     /// The same with average lengths for this stature.
     pub average: Study,
+    /// The same with usual ranges.
+    pub usual: Study,
+    /// Why not lower, and what it would take.
+    pub reasons: Reasons,
+    /// Where it balances.
+    pub map: Map,
     /// What must be told.
     pub notices: Vec<Notice>,
     /// Deepest thigh angle with any posture, degrees.
@@ -53,8 +61,9 @@ impl Computed {
 fn results(case: &Case, notices: Vec<Notice>) -> Results {
     let study = study(case);
     let average = plumbfold_core::study(&case.with_average_lengths());
-    let deepest_deg = deepest(case);
-    Results { study, average, notices, deepest_deg }
+    let usual = plumbfold_core::study(&with_usual_ranges(case));
+    let map = map_of(&study);
+    Results { average, usual, reasons: reasons(case), map, notices, deepest_deg: deepest(case), study }
 }
 
 /// Deepest thigh angle, from standing, at which there is a posture at all (degrees, to 0.01°).
@@ -82,6 +91,16 @@ impl Results {
     #[must_use]
     pub fn at(&self, depth_deg: f64) -> Step {
         Step::at(&self.study.case, Angle::from_deg(depth_deg.clamp(0.0, self.deepest_deg)))
+    }
+
+    /// The study after changes made one after the other; none where one does not go with the task.
+    #[must_use]
+    pub fn tried(&self, changes: &[Change]) -> Option<Study> {
+        let mut case = self.study.case.clone();
+        for c in changes {
+            case = case.changed(c).ok()?;
+        }
+        Some(study(&case))
     }
 
     /// A posture with the trunk held at another lean, and how it then stands.

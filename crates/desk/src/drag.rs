@@ -59,7 +59,7 @@ pub fn drag(state: &State, results: &Results, now: &Step, d: &Drag) -> Option<Ac
             let kg = (d.from_value - d.risen_m * KG_PER_M).clamp(b.min, b.max);
             Some(Action::Edit(Edit::Number(Entry::Load, Some((kg * 2.0).round() / 2.0)), d.undo))
         }
-        Handle::KneeHipSlider => None,
+        Handle::KneeHipSlider | Handle::MapDot => None,
         Handle::PainMark => {
             let deg = depth_of_hip(results, d.to.y).round();
             Some(Action::Edit(Edit::Number(Entry::PainFrom, Some(deg)), d.undo))
@@ -158,7 +158,7 @@ pub fn nudge(state: &State, results: &Results, now: &Step, handle: Handle, steps
         return Some(Action::Edit(Edit::Seen(angles), Undo::Whole));
     }
     match handle {
-        Handle::Hip | Handle::Rail => {
+        Handle::Hip | Handle::Rail | Handle::MapDot => {
             let now_deg = state.view.depth_deg.min(results.deepest_deg);
             Some(depth((now_deg + steps).clamp(0.0, results.deepest_deg)))
         }
@@ -186,6 +186,17 @@ fn step_entry(state: &State, entry: Entry, steps: f64) -> Option<Action> {
     let b = entry.bounds(&state.doc);
     let value = (entry.get(&state.doc)? + steps * b.step).clamp(b.min, b.max);
     Some(Action::Edit(Edit::Number(entry, Some(value)), Undo::Whole))
+}
+
+/// The dot on the map dragged to a pair of angles: the depth, and the slope of the usual shank
+/// through that point.
+#[must_use]
+pub fn map_to(thigh: Angle, shank: Angle, undo: Undo) -> Vec<Action> {
+    let mut out = vec![depth(thigh.deg())];
+    if thigh.deg() >= SLOPE_FROM_DEG {
+        out.push(slope_to((shank.deg() - tables::USUAL_SHANK_AT_STANDING_DEG) / thigh.deg(), undo));
+    }
+    out
 }
 
 /// Sets the slope of the usual shank: the slider between more knee and more hip and back.

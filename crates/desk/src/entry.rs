@@ -308,6 +308,7 @@ pub const UNSEEN: Seen = Seen {
     pain_0_10: None,
     pain_from_thigh_deg: None,
     stopped_by: None,
+    pain_at: None,
 };
 
 /// A bend choice in degrees.

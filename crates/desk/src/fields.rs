@@ -224,7 +224,7 @@ pub fn error_under(ui: &mut Ui, state: &State, theme: Theme, entry: Entry) {
 }
 
 /// Width of the names at the left of fields.
-pub const NAME_WIDTH: f32 = 92.0;
+pub const NAME_WIDTH: f32 = 98.0;
 
 /// A name at the left of a field.
 pub fn name(ui: &mut Ui, text: &str) -> Response {

@@ -54,8 +54,14 @@ pub fn paint(painter: &egui::Painter, origin: Pos2, scene: &Scene, theme: Theme)
                 painter.add(PathShape::line(points, Stroke::new(*width, color(theme, *role))));
             }
             Item::Cells(cells) => {
+                // edges on whole pixels, so that neighbours leave no seam
+                let px = painter.pixels_per_point();
+                let snap = |v: f32| (v * px).round() / px;
                 for (area, role) in cells.runs() {
-                    painter.rect_filled(to_rect(origin, area), 0.0, color(theme, role));
+                    let r = to_rect(origin, area);
+                    let on_pixels =
+                        Rect::from_min_max(pos2(snap(r.min.x), snap(r.min.y)), pos2(snap(r.max.x), snap(r.max.y)));
+                    painter.rect_filled(on_pixels, 0.0, color(theme, role));
                 }
             }
             Item::Text(label) => text(painter, origin, label, theme),

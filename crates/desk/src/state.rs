@@ -2,7 +2,7 @@
 
 use std::{collections::HashMap, path::PathBuf};
 
-use plumbfold_core::Angle;
+use plumbfold_core::{Angle, takes::Change};
 use plumbfold_records::Client;
 use plumbfold_scene::theme::Palette;
 
@@ -46,8 +46,10 @@ pub struct ViewState {
     pub facing_left: bool,
     /// Colours.
     pub palette: Palette,
-    /// Whether the outline with average lengths is shown.
-    pub outline: bool,
+    /// What is outlined behind the figure.
+    pub outline: Behind,
+    /// Changes tried on the figure, neither saved nor undone.
+    pub trying: Option<Vec<Change>>,
     /// Whether handles write what was seen.
     pub matching: bool,
     /// Whether the view for the client is shown.
@@ -66,6 +68,29 @@ pub struct ViewState {
     pub field_errors: HashMap<Entry, String>,
     /// Whether anything on the figure was dragged yet; the first-use line goes then.
     pub dragged: bool,
+}
+
+/// What is outlined behind the figure.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Behind {
+    /// Nothing.
+    Nothing,
+    /// Average lengths for this stature, the client's ranges.
+    AverageLengths,
+    /// The client's lengths, usual ranges.
+    UsualRanges,
+}
+
+impl Behind {
+    /// The next in turn.
+    #[must_use]
+    pub const fn next(self) -> Self {
+        match self {
+            Self::Nothing => Self::AverageLengths,
+            Self::AverageLengths => Self::UsualRanges,
+            Self::UsualRanges => Self::Nothing,
+        }
+    }
 }
 
 /// The file behind the document.
@@ -119,7 +144,8 @@ impl State {
             playing: false,
             facing_left: false,
             palette: Palette::Light,
-            outline: true,
+            outline: Behind::AverageLengths,
+            trying: None,
             matching: false,
             client_view: false,
             plots: true,

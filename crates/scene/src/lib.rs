@@ -33,6 +33,7 @@ pub mod figure;
 pub mod fonts;
 pub mod format;
 pub mod geometry;
+pub mod map;
 pub mod measure;
 pub mod page;
 pub mod place;

@@ -234,6 +234,8 @@ pub enum Handle {
     KneeHipSlider,
     /// Where pain starts, on the rail.
     PainMark,
+    /// Depth and shank, on the map of where it balances.
+    MapDot,
 }
 
 /// Where a grip answers to the pointer.

@@ -20,5 +20,5 @@ pub fn show(ui: &mut Ui, state: &State, results: &Results, theme: Theme, out: &m
     // 34 points at full HD, as legible on a smaller screen held as near
     let text = (area.height() / 1080.0 * 36.0).clamp(20.0, 60.0);
     let now = results.at(state.view.depth_deg);
-    draw(ui, &Desk { state, results, now: &now, theme }, area, &Look::client(text, facing), out);
+    draw(ui, &Desk { state, results, shown: &results.study, now: &now, theme }, area, &Look::client(text, facing), out);
 }

@@ -2,20 +2,21 @@
 //! actions.
 
 use egui::{Event, EventFilter, Key, Rect, Response, Sense, Ui, pos2, vec2};
-use plumbfold_core::{Angle, Balance, Posture, Standing, Step};
+use plumbfold_core::{Angle, Balance, Posture, Step, Study};
 use plumbfold_scene::{
     Grip, Handle, Hit, Role, Scene, Size, Theme,
     figure::{Facing, Look, Outline, Show, View, figure},
 };
 
 use crate::{
-    action::{Action, ViewChange},
+    action::{Action, Edit, Step as Undo, ViewChange},
     command::Command,
     computed::Results,
     drag::{Drag, depth_of_seat, drag, nudge, slope_to},
+    entry::Entry,
     fields::gesture,
     painter::{color, paint, to_page, to_rect},
-    state::State,
+    state::{Behind, State},
 };
 
 /// What the figure needs.
@@ -24,7 +25,9 @@ pub struct Desk<'a> {
     pub state: &'a State,
     /// What was computed.
     pub results: &'a Results,
-    /// The posture at the depth shown.
+    /// The study drawn: the client's, or that of a change tried.
+    pub shown: &'a Study,
+    /// The posture of that study at the depth shown.
     pub now: &'a Step,
     /// Colours.
     pub theme: Theme,
@@ -65,7 +68,8 @@ fn scene(d: &Desk<'_>, size: Size, look: &Look) -> (Scene, View) {
     let seen = v.matching.then(|| d.results.seen()).flatten();
     let now: Balance = seen.unwrap_or(d.now.balance);
     let thigh = now.posture().map_or(d.now.thigh, |p| p.thigh);
-    let held = v.straighten.and_then(|lean| d.results.straightened(now.posture()?, lean));
+    let held =
+        v.straighten.and_then(|lean| d.results.straightened(now.posture()?, lean)).filter(|_| v.trying.is_none());
     let outline = outline(d, now.posture());
     let seen_pain = d.results.study.case.task().seen.is_some();
     let pain = d.state.doc.task().seen.filter(|_| seen_pain).and_then(|s| s.pain_from_thigh_deg);
@@ -77,40 +81,41 @@ fn scene(d: &Desk<'_>, size: Size, look: &Look) -> (Scene, View) {
         Some(FIRST_USE)
     };
     let show = Show {
-        study: &d.results.study,
+        study: d.shown,
         thigh,
         now: &now,
         straightened: held.as_ref().map(|h| &h.0),
         outline: outline.as_ref().map(|(case, posture, what)| Outline { case, posture, what }),
         pain_from: pain.map(Angle::from_deg),
-        deepest: Angle::from_deg(d.results.deepest_deg),
+        deepest: Angle::from_deg(d.results.deepest_deg).max(thigh),
         note: note.filter(|_| look.style == plumbfold_scene::figure::Style::Annotated),
     };
     figure(&show, size, look)
 }
 
-type Behind<'a> = (&'a plumbfold_core::Case, Posture, &'static str);
+type Outlined<'a> = (&'a plumbfold_core::Case, Posture, &'static str);
 
-/// While matching, the computed posture; else average lengths in the posture they take there. The
-/// client never sees the average person's outline.
-fn outline<'a>(d: &Desk<'a>, now: Option<&Posture>) -> Option<Behind<'a>> {
+/// What stands behind: the computed posture while matching, the present one while a change is tried,
+/// else what was chosen. The client never sees another person's outline.
+fn outline<'a>(d: &Desk<'a>, now: Option<&Posture>) -> Option<Outlined<'a>> {
     let v = &d.state.view;
     if v.client_view {
         return None;
     }
     if v.matching {
-        return d.now.balance.posture().map(|p| (&d.results.study.case, *p, "as computed at the depth set"));
+        return d.now.balance.posture().map(|p| (&d.shown.case, *p, "as computed at the depth set"));
     }
-    if !v.outline {
-        return None;
+    let at = |case: &'a plumbfold_core::Case, what| {
+        let balance = plumbfold_core::posture(case, now?.thigh);
+        balance.held().map(|p| (case, *p, what))
+    };
+    if v.trying.is_some() {
+        return at(&d.results.study.case, "as set up now");
     }
-    let case = &d.results.average.case;
-    let thigh = now?.thigh;
-    match plumbfold_core::posture(case, thigh) {
-        Balance::Stands { posture, standing: Standing::Steady | Standing::Drifting(_) } => {
-            Some((case, posture, "average lengths for this stature, same ranges"))
-        }
-        _ => None,
+    match v.outline {
+        Behind::Nothing => None,
+        Behind::AverageLengths => at(&d.results.average.case, "average lengths for this stature, same ranges"),
+        Behind::UsualRanges => at(&d.results.usual.case, "same lengths, usual ranges"),
     }
 }
 
@@ -119,7 +124,7 @@ fn buttons(ui: &mut Ui, d: &Desk<'_>, out: &mut Vec<Action>) {
         for (command, on) in [
             (Command::Play, d.state.view.playing),
             (Command::MatchSeen, d.state.view.matching),
-            (Command::Outline, d.state.view.outline),
+            (Command::Outline, d.state.view.outline != Behind::Nothing),
             (Command::Face, d.state.view.facing_left),
         ] {
             let label = if command == Command::Play && on { "Stop" } else { command.label() };
@@ -127,7 +132,23 @@ fn buttons(ui: &mut Ui, d: &Desk<'_>, out: &mut Vec<Action>) {
                 out.push(Action::Run(command));
             }
         }
+        pain_button(ui, d, out);
     });
+}
+
+/// Sets the pain mark at the depth shown; it belongs to a squat that was seen.
+fn pain_button(ui: &mut Ui, d: &Desk<'_>, out: &mut Vec<Action>) {
+    let seen = d.state.doc.task().seen.is_some();
+    let hint = if seen {
+        "Set the pain mark on the rail at this depth"
+    } else {
+        "Match or type the squat you saw first; the pain mark belongs to it"
+    };
+    let button = ui.add_enabled(seen, egui::Button::new("Pain starts here"));
+    if button.on_hover_text(hint).on_disabled_hover_text(hint).clicked() {
+        let deg = d.state.view.depth_deg.min(d.results.deepest_deg).round();
+        out.push(Action::Edit(Edit::Number(Entry::PainFrom, Some(deg)), Undo::Whole));
+    }
 }
 
 fn grips(ui: &mut Ui, d: &Desk<'_>, area: Rect, scene: &Scene, view: &View, out: &mut Vec<Action>) {
@@ -143,7 +164,7 @@ fn grips(ui: &mut Ui, d: &Desk<'_>, area: Rect, scene: &Scene, view: &View, out:
             node.add_action(egui::accesskit::Action::Increment);
             node.add_action(egui::accesskit::Action::Decrement);
         });
-        halo(ui, d, area, grip, &response);
+        halo(ui, d.theme, area, grip, &response);
         if response.dragged() || response.drag_started() || response.clicked() {
             out.extend(dragged(ui, d, area, grip, view, &response));
         }
@@ -156,12 +177,12 @@ fn grips(ui: &mut Ui, d: &Desk<'_>, area: Rect, scene: &Scene, view: &View, out:
 }
 
 /// A ring around the grip that is held, hovered or has the focus.
-fn halo(ui: &Ui, d: &Desk<'_>, area: Rect, grip: &Grip, response: &Response) {
+pub(super) fn halo(ui: &Ui, theme: Theme, area: Rect, grip: &Grip, response: &Response) {
     if !(response.hovered() || response.dragged() || response.has_focus()) {
         return;
     }
     let width = if response.has_focus() { 2.0 } else { 1.2 };
-    let stroke = egui::Stroke::new(width, color(d.theme, Role::Accent));
+    let stroke = egui::Stroke::new(width, color(theme, Role::Accent));
     match grip.hit {
         Hit::Circle { at, radius } => {
             ui.painter().circle_stroke(area.min + vec2(at.x, at.y), radius, stroke);
@@ -234,7 +255,7 @@ fn keys(ui: &Ui, d: &Desk<'_>, grip: &Grip, response: &Response, out: &mut Vec<A
         let (left, right) = (pressed(Key::ArrowLeft), pressed(Key::ArrowRight));
         steps += match grip.handle {
             // deeper is downward
-            Handle::Hip | Handle::Rail | Handle::PainMark => down - up + right - left,
+            Handle::Hip | Handle::Rail | Handle::MapDot | Handle::PainMark => down - up + right - left,
             // the trunk rises with up
             Handle::Shoulder => up - down + right - left,
             Handle::KneeHipSlider => left - right + up - down,

@@ -1,7 +1,7 @@
 //! The right side: what it means, in the order a clinician asks.
 
 use egui::{RichText, Sense, Ui, vec2};
-use plumbfold_core::{Angle, Balance, Step, posture, posture_notices};
+use plumbfold_core::{Angle, Balance, Step, Study, posture, posture_notices, seen::depth_that_suits};
 use plumbfold_scene::{
     Role, Theme, Weight, format,
     words::{clinician, notices},
@@ -12,6 +12,7 @@ use crate::{
     computed::Results,
     fields::left,
     painter::{color, font},
+    panels::why,
     state::State,
 };
 
@@ -21,7 +22,9 @@ pub struct Meaning<'a> {
     pub state: &'a State,
     /// What was computed.
     pub results: &'a Results,
-    /// The posture shown.
+    /// The study shown: the client's, or that of a change tried.
+    pub shown: &'a Study,
+    /// The posture of that study at the depth shown.
     pub now: &'a Step,
     /// Colours.
     pub theme: Theme,
@@ -30,19 +33,19 @@ pub struct Meaning<'a> {
 /// Shows the right side.
 pub fn show(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
     demonstration(ui, m, out);
-    seen(ui, m);
+    why::show(ui, m, out);
     depths(ui, m, out);
     at_this_depth(ui, m);
     demands(ui, m);
     told(ui, m);
 }
 
-fn heading(ui: &mut Ui, title: &str) {
+pub(super) fn heading(ui: &mut Ui, title: &str) {
     ui.add_space(8.0);
     ui.label(RichText::new(title).font(font(14.0, Weight::SemiBold)));
 }
 
-fn soft(ui: &mut Ui, m: &Meaning<'_>, text: impl Into<String>) {
+pub(super) fn soft(ui: &mut Ui, m: &Meaning<'_>, text: impl Into<String>) {
     ui.label(RichText::new(text).small().color(color(m.theme, Role::InkSoft)));
 }
 
@@ -56,13 +59,9 @@ fn demonstration(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
     }
 }
 
-fn seen(ui: &mut Ui, m: &Meaning<'_>) {
-    let Some(seen) = m.results.study.case.task().seen else { return };
-    heading(ui, "Seen and computed");
-    ui.label(clinician::seen_and_computed(m.results.study.depths.steady, seen.thigh));
-    if let Some(Balance::Stands { standing, .. }) = m.results.seen() {
-        soft(ui, m, format!("The squat as seen: {}.", clinician::standing(&standing)));
-    }
+/// The pain mark of the squat seen.
+pub(super) fn pain_from(m: &Meaning<'_>) -> Option<Angle> {
+    m.state.doc.task().seen.and_then(|s| s.pain_from_thigh_deg).map(Angle::from_deg)
 }
 
 /// Seat height at a depth by the task's rule, m.
@@ -85,8 +84,16 @@ fn depths(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
             }
         }
     });
-    if let Some(a) = m.results.average.depths.steady {
-        soft(ui, m, format!("With average lengths and the same ranges: {}", format::deg_spoken(a)));
+    if let Some(s) = depth_that_suits(&m.results.study.case, pain_from(m)) {
+        let p = &s.posture;
+        let why = if s.by_pain { "at the pain mark" } else { "deepest on mid-foot within what we chose" };
+        ui.label(format!(
+            "A depth that suits: thigh {}, knee {}, seat {}",
+            format::deg(p.thigh),
+            format::deg(p.knee_flexion),
+            format::cm(p.seat_height_m)
+        ));
+        soft(ui, m, why);
     }
 }
 
@@ -123,15 +130,14 @@ fn at_this_depth(ui: &mut Ui, m: &Meaning<'_>) {
 
 fn demands(ui: &mut Ui, m: &Meaning<'_>) {
     let Some(r) = m.now.readings.as_ref() else { return };
-    let case = &m.results.study.case;
+    let case = &m.shown.case;
     if case.figure_only() {
         soft(ui, m, notices::FIGURE_ONLY);
         return;
     }
     heading(ui, "Work required, N·m");
     let peak = m
-        .results
-        .study
+        .shown
         .descent
         .iter()
         .filter_map(|s| s.readings.as_ref())
@@ -185,7 +191,7 @@ fn bar(ui: &mut Ui, share: f32, role: Role, stretched: bool, theme: Theme) {
 fn told(ui: &mut Ui, m: &Meaning<'_>) {
     let mut all = m.results.notices.clone();
     if let Some(p) = m.now.balance.posture() {
-        all.extend(posture_notices(&m.results.study.case, p));
+        all.extend(posture_notices(&m.shown.case, p));
     }
     if m.results.study.depths.steady.is_none() {
         all.push(plumbfold_core::Notice::NoSteadyStanding);

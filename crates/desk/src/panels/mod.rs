@@ -3,7 +3,9 @@
 pub mod client;
 pub mod dialogs;
 pub mod figure;
+pub mod map;
 pub mod meaning;
 pub mod measured;
 pub mod plots;
 pub mod top;
+pub mod why;

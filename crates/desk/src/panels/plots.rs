@@ -2,6 +2,7 @@
 
 use egui::{Color32, RichText, Stroke, Ui, vec2};
 use egui_plot::{Line, LineStyle, Plot, PlotPoint, PlotPoints, Polygon, Text, VLine};
+use plumbfold_core::{Step, Study};
 use plumbfold_scene::{Axis, BandKind, Chart, Role, Theme, Weight, chart, plots};
 
 use crate::{
@@ -13,11 +14,25 @@ use crate::{
 };
 
 /// Height of the plots.
-pub const HEIGHT: f32 = 168.0;
+pub const HEIGHT: f32 = 188.0;
+
+/// What the plots need.
+pub struct Plots<'a> {
+    /// The desk.
+    pub state: &'a State,
+    /// What was computed.
+    pub results: &'a Results,
+    /// The study drawn: the client's, or that of a change tried.
+    pub shown: &'a Study,
+    /// The posture of that study at the depth shown.
+    pub now: &'a Step,
+    /// Colours.
+    pub theme: Theme,
+}
 
 /// Shows the plots, or the line that unfolds them.
-pub fn show(ui: &mut Ui, state: &State, results: &Results, theme: Theme, out: &mut Vec<Action>) {
-    let open = state.view.plots;
+pub fn show(ui: &mut Ui, p: &Plots<'_>, out: &mut Vec<Action>) {
+    let open = p.state.view.plots;
     let label = if open { "▼ Plots" } else { "▶ Plots" };
     let head = ui.add(egui::Button::new(RichText::new(label).small()).frame(false));
     head.widget_info(|| egui::WidgetInfo::selected(egui::Role::Button, true, open, "Plots"));
@@ -27,22 +42,28 @@ pub fn show(ui: &mut Ui, state: &State, results: &Results, theme: Theme, out: &m
     if !open {
         return;
     }
-    let now = Some(plumbfold_core::Angle::from_deg(state.view.depth_deg.min(results.deepest_deg)));
-    let mut charts = vec![plots::arms(&results.study, now), plots::angles(&results.study, now)];
-    if !results.study.case.figure_only() {
-        charts.push(plots::demands(&results.study, now));
+    let now = Some(p.now.balance.posture().map_or(p.now.thigh, |q| q.thigh));
+    let mut charts = vec![plots::arms(p.shown, now), plots::angles(p.shown, now)];
+    if !p.shown.case.figure_only() {
+        charts.push(plots::demands(p.shown, now));
     }
     let gap = 10.0;
-    let w = ((ui.available_width() - gap * (charts.len() as f32 - 1.0)) / charts.len() as f32).floor() - 2.0;
+    let n = charts.len() as f32 + 1.0;
+    let w = ((ui.available_width() - gap * (n - 1.0)) / n).floor() - 2.0;
     ui.horizontal_top(|ui| {
         ui.spacing_mut().item_spacing.x = gap;
         for c in &charts {
             ui.vertical(|ui| {
                 ui.set_width(w);
                 ui.label(RichText::new(&c.title).font(font(12.5, Weight::SemiBold)));
-                one(ui, c, vec2(w, HEIGHT - 46.0), theme, out);
+                one(ui, c, vec2(w, HEIGHT - 46.0), p.theme, out);
             });
         }
+        ui.vertical(|ui| {
+            ui.set_width(w);
+            ui.label(RichText::new("Where it balances").font(font(12.5, Weight::SemiBold)));
+            super::map::show(ui, p, vec2(w, HEIGHT - 46.0), out);
+        });
     });
 }
 
@@ -75,7 +96,7 @@ fn one(ui: &mut Ui, c: &Chart, size: egui::Vec2, theme: Theme, out: &mut Vec<Act
         .allow_double_click_reset(false)
         .set_margin_fraction(vec2(0.0, 0.0))
         .show_crosshair(false)
-        .grid_spacing(12.0..=40.0)
+        .grid_spacing(2.0..=8.0)
         .label_formatter(|_| None)
         .x_grid_spacer(grid(&c.x, 6))
         .y_grid_spacer(grid(&c.y, 4))

@@ -61,7 +61,7 @@ fn who(ui: &mut Ui, state: &State, theme: Theme, out: &mut Vec<Action>) {
     let mut code: String = ui.data(|data| data.get_temp(id)).unwrap_or_else(|| d.client.code.as_str().to_owned());
     let edit = ui.add(
         egui::TextEdit::singleline(&mut code)
-            .desired_width(130.0)
+            .desired_width(156.0)
             .font(font(14.0, Weight::SemiBold))
             .char_limit(plumbfold_records::CODE_MAX_CHARS),
     );

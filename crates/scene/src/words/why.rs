@@ -51,7 +51,7 @@ pub fn worth(s: &Stop) -> Option<String> {
         return None;
     }
     let unit = if s.limit == Limit::Support { "cm" } else { "degree" };
-    Some(format!("one {unit} more is worth {}°", format::number(s.worth, 1)))
+    Some(format!("each {unit} {}°", format::number(s.worth, 1)))
 }
 
 /// The stops of a depth, one line each.
@@ -103,7 +103,7 @@ pub fn kind(k: Kind) -> String {
     match k {
         Kind::HeelRaise => "Heel raise".to_owned(),
         Kind::WiderStance => "Wider stance".to_owned(),
-        Kind::Counterweight => "Counterweight held forward".to_owned(),
+        Kind::Counterweight => "Counterweight".to_owned(),
         Kind::Placement(p) => super::capital(names::placement(p)),
         Kind::Ankle => "Ankle range".to_owned(),
         Kind::Hip => "Hip range".to_owned(),
@@ -149,10 +149,13 @@ pub fn outcome(t: &Take, case: &Case) -> String {
 /// What a change does at the goal.
 #[must_use]
 pub fn at_goal(a: &AtGoal) -> String {
-    let m = &a.readings.moments_nm;
+    let r = &a.readings;
+    let m = &r.moments_nm;
     format!(
-        "lean {} · knee {} · hip {} · low back {} N·m",
+        "lean {} · arms hip {}, knee {} · work knee {}, hip {}, low back {} N·m",
         format::deg(a.lean),
+        format::cm(r.hip_arm_m),
+        format::cm(r.knee_arm_m),
         format::number(m.knee, 0),
         format::number(m.hip, 0),
         format::number(m.low_back, 0)
@@ -172,11 +175,21 @@ pub fn take(t: &Take, case: &Case) -> String {
     line
 }
 
+/// The two changes of a pair with their amounts.
+#[must_use]
+pub fn pair_words(p: &Pair, case: &Case) -> String {
+    let part = |c: &Change| match c.kind {
+        Kind::Placement(_) => kind(c.kind),
+        _ => format!("{} {}", kind(c.kind), amount(c, case)),
+    };
+    let [a, b] = [part(&p.changes[0]), part(&p.changes[1])];
+    format!("{a} and {}", b.to_lowercase())
+}
+
 /// The pair as a line.
 #[must_use]
 pub fn pair(p: &Pair, case: &Case) -> String {
-    let parts: Vec<String> = p.changes.iter().map(|c| format!("{} {}", kind(c.kind), amount(c, case))).collect();
-    let together = parts.join(" and ");
+    let together = pair_words(p, case);
     match &p.at_goal {
         Some(a) => format!("{together} · {}", at_goal(a)),
         None => together,
