@@ -92,6 +92,10 @@ pub enum Entry {
     SeenPain,
     /// Thigh angle where pain starts.
     PainFrom,
+    /// Thigh angle reached with this set-up.
+    FeltDepth,
+    /// Pain with this set-up.
+    FeltPain,
 }
 
 fn side<T: Copy>(s: &Sides<T>, side: Side) -> Option<T> {
@@ -143,9 +147,10 @@ impl Entry {
             Self::Ratio => Field::Ratio,
             Self::HeldShank => Field::HeldShank,
             Self::SeenThigh | Self::PainFrom => Field::SeenThigh,
+            Self::FeltDepth => Field::Goal,
             Self::SeenShank => Field::SeenShank,
             Self::SeenTrunk => Field::SeenTrunk,
-            Self::SeenPain => Field::Pain,
+            Self::SeenPain | Self::FeltPain => Field::Pain,
         })
     }
 
@@ -231,6 +236,8 @@ impl Entry {
             Self::SeenTrunk => t.seen.map(|s| s.trunk_deg),
             Self::SeenPain => t.seen.and_then(|s| s.pain_0_10),
             Self::PainFrom => t.seen.and_then(|s| s.pain_from_thigh_deg),
+            Self::FeltDepth => t.felt.and_then(|f| f.depth_thigh_deg),
+            Self::FeltPain => t.felt.and_then(|f| f.pain_0_10),
         }
     }
 
@@ -285,6 +292,15 @@ impl Entry {
             Self::Slope => d.task_mut().rule = Rule::Usual { slope: value },
             Self::Ratio => d.task_mut().rule = value.map_or(d.task().rule, Rule::ArmRatio),
             Self::HeldShank => d.task_mut().rule = value.map_or(d.task().rule, Rule::HeldShank),
+            Self::FeltDepth | Self::FeltPain => {
+                // says nothing before it is known how it felt
+                if let Some(felt) = &mut d.task_mut().felt {
+                    match self {
+                        Self::FeltDepth => felt.depth_thigh_deg = value,
+                        _ => felt.pain_0_10 = value,
+                    }
+                }
+            }
             Self::SeenThigh | Self::SeenShank | Self::SeenTrunk | Self::SeenPain | Self::PainFrom => {
                 let seen = d.task_mut().seen.get_or_insert(UNSEEN);
                 match self {

@@ -1,7 +1,7 @@
 //! What choices are called on the desk.
 
 use plumbfold_core::{Placement, Scope, SegmentTable};
-use plumbfold_records::{Bend, Rule, StoppedBy};
+use plumbfold_records::{Bend, Compared, PainAt, Rule, StoppedBy};
 use plumbfold_scene::format;
 
 use crate::action::{AnkleWay, HipWay};
@@ -97,5 +97,26 @@ pub const fn stopped_by(s: StoppedBy) -> &'static str {
         StoppedBy::Stiffness => "stiffness",
         StoppedBy::Confidence => "confidence",
         StoppedBy::Instruction => "we asked to stop",
+    }
+}
+
+/// How a set-up felt.
+#[must_use]
+pub const fn compared(c: Compared) -> &'static str {
+    match c {
+        Compared::Easier => "easier",
+        Compared::Same => "the same",
+        Compared::Harder => "harder",
+    }
+}
+
+/// Which joint hurts.
+#[must_use]
+pub const fn pain_at(j: PainAt) -> &'static str {
+    match j {
+        PainAt::Ankle => "ankle",
+        PainAt::Knee => "knee",
+        PainAt::Hip => "hip",
+        PainAt::LowBack => "low back",
     }
 }

@@ -43,6 +43,12 @@ pub fn deg_spoken(a: Angle) -> String {
     format!("{}°", number((a.deg() / 5.0).round() * 5.0, 0))
 }
 
+/// A depth up to which something holds, to 5° and never more than it is: `75°` for 78°.
+#[must_use]
+pub fn deg_up_to(a: Angle) -> String {
+    format!("{}°", number((a.deg() / 5.0 + 1e-9).floor() * 5.0, 0))
+}
+
 /// A change of an angle: `+7°`.
 #[must_use]
 pub fn deg_signed(a: Angle) -> String {
@@ -122,6 +128,8 @@ mod tests {
         assert_eq!(deg(Angle::from_deg(-12.0)), "−12°");
         assert_eq!(deg_spoken(Angle::from_deg(76.2)), "75°");
         assert_eq!(deg_spoken(Angle::from_deg(77.6)), "80°");
+        assert_eq!(deg_up_to(Angle::from_deg(79.9)), "75°");
+        assert_eq!(deg_up_to(Angle::from_deg(80.0)), "80°");
         assert_eq!(deg_signed(Angle::from_deg(7.0)), "+7°");
         assert_eq!(cm(0.2749), "27 cm");
         assert_eq!(cm_fine(0.398), "39.8 cm");

@@ -2,7 +2,7 @@
 
 use egui::{Align, ComboBox, Layout, RichText, Ui, vec2};
 use plumbfold_core::{Angle, Placement, Scope, SegmentTable, Sex, limits};
-use plumbfold_records::{Ankle, Bend, Hip, Rule, StoppedBy};
+use plumbfold_records::{Ankle, Bend, Compared, Felt, Hip, PainAt, Rule, StoppedBy};
 use plumbfold_scene::{Role, Theme, Weight, format};
 
 use crate::{
@@ -305,6 +305,7 @@ fn choices(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
         out,
         if t.lean_limit_deg.is_none() { "none chosen" } else { "" },
     );
+    felt(ui, m, out);
     if m.state.view.more_choices {
         posture_rule(ui, m, out);
         plain(ui, Entry::WeightLeft, "Weight, left", "even", None, out, "of both legs");
@@ -332,6 +333,38 @@ fn tasks(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
             out.push(Action::Edit(Edit::RemoveTask, Step::Whole));
         }
     });
+}
+
+/// How the set-up felt when the client tried it.
+fn felt(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
+    let now = m.state.doc.task().felt;
+    ui.horizontal(|ui| {
+        name(ui, "It felt");
+        let shown = now.map_or("not tried", |f| names::compared(f.compared));
+        combo(ui, "It felt", shown, WIDE - 30.0, |ui| {
+            if ui.selectable_label(now.is_none(), "not tried").clicked() {
+                out.push(Action::Edit(Edit::Felt(None), Step::Whole));
+            }
+            for c in Compared::ALL {
+                if ui.selectable_label(now.is_some_and(|f| f.compared == c), names::compared(c)).clicked() {
+                    let rest = now.unwrap_or(Felt { compared: c, depth_thigh_deg: None, pain_0_10: None });
+                    out.push(Action::Edit(Edit::Felt(Some(Felt { compared: c, ..rest })), Step::Whole));
+                }
+            }
+        });
+    });
+    if now.is_none() {
+        return;
+    }
+    ui.horizontal(|ui| {
+        name(ui, "…depth, pain");
+        for (entry, spoken) in [(Entry::FeltDepth, "Depth reached"), (Entry::FeltPain, "Pain then, 0 to 10")] {
+            let r = NumberRow { entry, name: spoken, stand_in: None, empty: "–", width: HALF };
+            number(ui, m.state, m.theme, &r, spoken, out);
+        }
+    });
+    error_under(ui, m.state, m.theme, Entry::FeltDepth);
+    error_under(ui, m.state, m.theme, Entry::FeltPain);
 }
 
 fn posture_rule(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
@@ -389,7 +422,9 @@ fn seen(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
             ui.vertical(|ui| {
                 ui.label(soft(m, title).small());
                 let r = NumberRow { entry, name: title, stand_in: None, empty: "–", width: 66.0 };
+                let before = out.len();
                 number(ui, m.state, m.theme, &r, &format!("Seen {}", title.to_lowercase()), out);
+                first_seen(m, entry, &mut out[before..]);
             });
         }
     });
@@ -407,6 +442,17 @@ fn seen(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
         }
     });
     ui.horizontal(|ui| {
+        name(ui, "Hurts at");
+        let shown = seen.pain_at.map_or("not noted", names::pain_at);
+        combo(ui, "Hurts at", shown, WIDE - 30.0, |ui| {
+            for at in std::iter::once(None).chain(PainAt::ALL.into_iter().map(Some)) {
+                if ui.selectable_label(seen.pain_at == at, at.map_or("not noted", names::pain_at)).clicked() {
+                    out.push(Action::Edit(Edit::PainAt(at), Step::Whole));
+                }
+            }
+        });
+    });
+    ui.horizontal(|ui| {
         name(ui, "Stopped by");
         let shown = seen.stopped_by.map_or("not noted", names::stopped_by);
         combo(ui, "Stopped by", shown, WIDE - 30.0, |ui| {
@@ -421,6 +467,28 @@ fn seen(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
     let mut lifted = seen.heels_lifted;
     if ui.checkbox(&mut lifted, "Heels came up").changed() {
         out.push(Action::Edit(Edit::HeelsLifted(lifted), Step::Whole));
+    }
+}
+
+/// The first number typed of a seen squat: the other two start from the computed posture at the depth
+/// shown, to be set right next.
+fn first_seen(m: &Measured<'_>, entry: Entry, typed: &mut [Action]) {
+    if m.state.doc.task().seen.is_some() {
+        return;
+    }
+    for action in typed {
+        let Action::Edit(Edit::Number(_, Some(v)), step) = action else { continue };
+        let at = m.results.and_then(|r| r.at(m.state.view.depth_deg).balance.posture().copied());
+        let Some(p) = at else { continue };
+        let whole = |a: Angle| a.deg().round();
+        let mut angles = [whole(p.thigh), whole(p.shank), whole(p.trunk)];
+        let which = match entry {
+            Entry::SeenThigh => 0,
+            Entry::SeenShank => 1,
+            _ => 2,
+        };
+        angles[which] = *v;
+        *action = Action::Edit(Edit::Seen(angles), *step);
     }
 }
 

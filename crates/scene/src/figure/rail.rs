@@ -158,7 +158,7 @@ impl Rail {
         } else {
             add(Some(top_m(show.study)), "standing".to_owned(), Weight::Regular, Role::InkSoft, t, Mark::Plain);
             if let Some(a) = steady {
-                let text = format!("on mid-foot to {}", format::deg_spoken(a));
+                let text = format!("on mid-foot to {}", format::deg_up_to(a));
                 add(deepest(steady), text, Weight::SemiBold, Role::Steady, t, Mark::Plain);
             }
             let same = steady.zip(balance).is_some_and(|(s, b)| (b.deg() - s.deg()).abs() < 0.5);
@@ -166,7 +166,7 @@ impl Rail {
                 let text = if same {
                     "below, needs a hold".to_owned()
                 } else {
-                    format!("needs a hold below {}", format::deg_spoken(a))
+                    format!("needs a hold below {}", format::deg_up_to(a))
                 };
                 add(deepest(balance), text, Weight::Regular, Role::Ink, t, Mark::Plain);
             }

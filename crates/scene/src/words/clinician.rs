@@ -55,8 +55,8 @@ pub fn headline(b: &Balance, thigh: Angle, steady: Option<Angle>) -> String {
 #[must_use]
 pub fn depths(steady: Option<(Angle, Option<f64>)>, balance: Option<(Angle, Option<f64>)>) -> String {
     let spoken = |(a, seat): (Angle, Option<f64>)| match seat {
-        Some(m) => format!("{} (seat {})", format::deg_spoken(a), format::cm(m)),
-        None => format::deg_spoken(a),
+        Some(m) => format!("{} (seat {})", format::deg_up_to(a), format::cm(m)),
+        None => format::deg_up_to(a),
     };
     match (steady, balance) {
         (None, None) => "not in balance even standing".to_owned(),
