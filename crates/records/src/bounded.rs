@@ -8,7 +8,7 @@ use serde::{
     de::{Error, MapAccess, SeqAccess, Unexpected, Visitor},
 };
 
-use crate::v1::Saved;
+use crate::saved::Saved;
 
 /// Stands for "as it is typed in the file": the text at the place of the error says it better than
 /// a number would (`1e400`, not `inf`).

@@ -83,7 +83,7 @@ fn newer(path: &Path, format: u32) -> Problem {
         line: None,
         field: Some("format".to_owned()),
         value: format!("{format}, written by a newer version"),
-        allowed: format!("a file of format {} or none", crate::read::CURRENT_FORMAT),
+        allowed: format!("a file of format {} or older, or none", crate::read::CURRENT_FORMAT),
         hint: "save under another name",
     }
 }

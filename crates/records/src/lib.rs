@@ -4,10 +4,14 @@
 //! millimetres, kilograms, degrees. Nothing here is converted and written back; [`Visit::measures`]
 //! and [`Visit::task`] lead one way, to the SI types of `plumbfold_core`.
 //!
-//! The way through: bytes → [`read`] → the saved structs of one format version (`v1`, every range
-//! checked while reading, so that an error knows its line and field) → `migrate` → [`Client`]; and
-//! back with [`write()`], which reads its own text again before it hands it out. Files of a newer
-//! format come back as [`Opened::Newer`], which has no way to be saved.
+//! The way through: bytes → [`read`] → the saved structs of one format version (`v1`, `v2`, every
+//! range checked while reading, so that an error knows its line and field) → `migrate` → [`Client`];
+//! and back with [`write()`], which takes the lowest format that loses nothing and reads its own text
+//! again before it hands it out. Files of a newer format come back as [`Opened::Newer`], which has no
+//! way to be saved.
+//!
+//! Format 2 adds to format 1 how a change that was tried felt ([`Task::felt`]) and which joint hurts
+//! ([`Seen::pain_at`]); both may be left out, and a file without either is written in format 1.
 //!
 //! ```
 //! use plumbfold_core::measures::Sex;
@@ -29,9 +33,11 @@ mod explain;
 mod migrate;
 mod problem;
 mod read;
+mod saved;
 mod task;
 mod text;
 mod v1;
+mod v2;
 mod write;
 
 pub use client::{Ankle, Build, Caps, Client, Code, CodeFault, Hip, Joints, Knee, Visit};
@@ -39,6 +45,6 @@ pub use disk::{open, save};
 pub use jiff::civil::Date;
 pub use problem::Problem;
 pub use read::{CURRENT_FORMAT, Opened, SIZE_LIMIT_BYTES, read};
-pub use task::{Bend, Rule, Seen, StoppedBy, Support, Task};
+pub use task::{Bend, Compared, Felt, PainAt, Rule, Seen, StoppedBy, Support, Task};
 pub use text::{CODE_MAX_CHARS, NAME_MAX_CHARS, NOTE_MAX_CHARS, SOURCE_MAX_CHARS};
 pub use write::write;

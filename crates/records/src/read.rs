@@ -14,8 +14,9 @@ use crate::{
     problem::Problem,
 };
 
-/// The format written; files up to it are read.
-pub const CURRENT_FORMAT: u32 = 1;
+/// The newest format; files up to it are read. [`write()`](crate::write()) writes the oldest that
+/// holds all there is.
+pub const CURRENT_FORMAT: u32 = 2;
 
 /// Largest file read, bytes. A client of many years is some hundred kilobytes.
 pub const SIZE_LIMIT_BYTES: usize = 4 * 1024 * 1024;

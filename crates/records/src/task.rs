@@ -35,6 +35,8 @@ pub struct Task {
     pub rule: Rule,
     /// The squat that was seen.
     pub seen: Option<Seen>,
+    /// How this set-up felt when the client tried it.
+    pub felt: Option<Felt>,
     /// Mid-foot zone and support edges, fractions of the foot from the heel.
     pub support: Support,
 }
@@ -57,6 +59,7 @@ impl Task {
             weight_left_percent: None,
             rule: Rule::default(),
             seen: None,
+            felt: None,
             support: Support::default(),
         }
     }
@@ -112,8 +115,28 @@ pub struct Seen {
     pub pain_0_10: Option<f64>,
     /// Thigh angle at which pain starts, degrees.
     pub pain_from_thigh_deg: Option<f64>,
+    /// Which joint hurts.
+    pub pain_at: Option<PainAt>,
     /// What ended the descent.
     pub stopped_by: Option<StoppedBy>,
+}
+
+/// Which joint hurts.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum PainAt {
+    /// Ankle.
+    Ankle,
+    /// Knee.
+    Knee,
+    /// Hip.
+    Hip,
+    /// Low back.
+    LowBack,
+}
+
+impl PainAt {
+    /// Every joint, from the floor up.
+    pub const ALL: [Self; 4] = [Self::Ankle, Self::Knee, Self::Hip, Self::LowBack];
 }
 
 /// What ended the descent.
@@ -137,4 +160,31 @@ impl StoppedBy {
     /// Every reason, in the order asked.
     pub const ALL: [Self; 6] =
         [Self::Pain, Self::Effort, Self::Balance, Self::Stiffness, Self::Confidence, Self::Instruction];
+}
+
+/// How a change that was tried felt to the client.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Felt {
+    /// Against the squat before the change.
+    pub compared: Compared,
+    /// Thigh angle reached with it, degrees.
+    pub depth_thigh_deg: Option<f64>,
+    /// Pain with it as the client rates it.
+    pub pain_0_10: Option<f64>,
+}
+
+/// How a squat with a change felt against the one without it.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Compared {
+    /// Easier.
+    Easier,
+    /// The same.
+    Same,
+    /// Harder.
+    Harder,
+}
+
+impl Compared {
+    /// Every answer, in the order asked.
+    pub const ALL: [Self; 3] = [Self::Easier, Self::Same, Self::Harder];
 }

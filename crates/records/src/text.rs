@@ -8,7 +8,7 @@ use serde::{
     de::{Error, Unexpected},
 };
 
-use crate::{client::Code, problem::shown, v1::Saved};
+use crate::{client::Code, problem::shown, saved::Saved};
 
 /// Longest client code, characters.
 pub const CODE_MAX_CHARS: usize = 40;

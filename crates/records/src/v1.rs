@@ -2,6 +2,9 @@
 //!
 //! Order and names of fields are those of the file. Numbers carry the bounds they are checked
 //! against while being read; every `Option` may be left out.
+//!
+//! What later formats did not change is theirs too: their client and visit are those of here with
+//! a task of their own.
 
 mod live;
 mod tasks;
@@ -14,44 +17,63 @@ use serde::{
 
 use crate::{
     bounded::{AS_TYPED, within},
+    read::CURRENT_FORMAT,
+    saved::Saved as _,
     text::{NOTE_MAX_CHARS, SOURCE_MAX_CHARS, SavedCode, SavedDate, SavedText},
 };
-pub(crate) use live::Saved;
+pub(crate) use tasks::{Bend, Named, Placement, Rule, Seen, StoppedBy, Support, Task};
 
-/// A client file.
+/// A file of format 1.
+pub(crate) type File = Client<1, Task>;
+
+/// A client file of any format whose clients and visits are those of format 1.
 #[derive(Serialize, Deserialize)]
-#[serde(deny_unknown_fields)]
-pub(crate) struct Client {
-    #[serde(deserialize_with = "format_1")]
-    format: Format,
+#[serde(deny_unknown_fields, bound(deserialize = "T: Deserialize<'de> + Named"))]
+pub(crate) struct Client<const FORMAT: u32, T> {
+    #[serde(deserialize_with = "this_format")]
+    format: Format<FORMAT>,
     code: SavedCode,
     #[serde(deserialize_with = "at_least_one")]
-    visits: Vec<Visit>,
+    visits: Vec<Visit<T>>,
 }
 
-/// The number 1.
-struct Format;
-
-impl Format {
-    const NUMBER: u32 = 1;
+impl<const FORMAT: u32, T> Client<FORMAT, T> {
+    /// The same in another format, each task turned into one of that format.
+    ///
+    /// # Errors
+    /// The first of `step`.
+    pub(crate) fn with_tasks<const TO: u32, U, E>(self, step: impl Fn(T) -> Result<U, E>) -> Result<Client<TO, U>, E> {
+        let Self { format: Format, code, visits } = self;
+        let visits = visits.into_iter().map(|visit| visit.with_tasks(&step)).collect::<Result<_, _>>()?;
+        Ok(Client { format: Format, code, visits })
+    }
 }
 
-impl Serialize for Format {
+/// The number of a format.
+struct Format<const NUMBER: u32>;
+
+impl<const NUMBER: u32> Serialize for Format<NUMBER> {
     fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
-        serializer.serialize_u32(Self::NUMBER)
+        serializer.serialize_u32(NUMBER)
     }
 }
 
-fn format_1<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Format, D::Error> {
-    match i64::deserialize(deserializer) {
-        Ok(number) if number == i64::from(Format::NUMBER) => Ok(Format),
-        Ok(other) => Err(D::Error::invalid_value(Unexpected::Other(&other.to_string()), &"format 1")),
-        Err(_) => Err(D::Error::invalid_value(Unexpected::Other(AS_TYPED), &"format 1")),
-    }
+fn this_format<'de, D: Deserializer<'de>, const NUMBER: u32>(deserializer: D) -> Result<Format<NUMBER>, D::Error> {
+    // The number chose the structs; one that comes here and is another is that of no format.
+    let found = match i64::deserialize(deserializer) {
+        Ok(number) if number == i64::from(NUMBER) => return Ok(Format),
+        Ok(other) => other.to_string(),
+        Err(_) => AS_TYPED.to_owned(),
+    };
+    let known: Vec<String> = (1..=CURRENT_FORMAT).map(|number| number.to_string()).collect();
+    let known = format!("format {}", known.join(" or "));
+    Err(D::Error::invalid_value(Unexpected::Other(&found), &known.as_str()))
 }
 
-fn at_least_one<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Vec<Visit>, D::Error> {
-    let visits = Vec::<Visit>::deserialize(deserializer)?;
+fn at_least_one<'de, D: Deserializer<'de>, T: Deserialize<'de> + Named>(
+    deserializer: D,
+) -> Result<Vec<Visit<T>>, D::Error> {
+    let visits = Vec::<Visit<T>>::deserialize(deserializer)?;
     if visits.is_empty() {
         return Err(D::Error::invalid_value(Unexpected::Other("no visit"), &"at least one visit"));
     }
@@ -59,8 +81,8 @@ fn at_least_one<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Vec<Visit>
 }
 
 #[derive(Serialize, Deserialize)]
-#[serde(deny_unknown_fields)]
-struct Visit {
+#[serde(deny_unknown_fields, bound(deserialize = "T: Deserialize<'de> + Named"))]
+struct Visit<T> {
     date: SavedDate,
     sex_model: SexModel,
     age_years: Option<within!(Age)>,
@@ -71,12 +93,48 @@ struct Visit {
     joints: Joints,
     caps: Caps,
     #[serde(deserialize_with = "tasks::each_named")]
-    tasks: Vec<tasks::Task>,
+    tasks: Vec<T>,
     note: SavedText<NOTE_MAX_CHARS>,
     #[serde(default, skip_serializing_if = "Segments::is_default")]
     segments: Segments,
     #[serde(default, skip_serializing_if = "Strength::is_default")]
     strength: Strength,
+}
+
+impl<T> Visit<T> {
+    fn with_tasks<U, E>(self, step: impl Fn(T) -> Result<U, E>) -> Result<Visit<U>, E> {
+        let Self {
+            date,
+            sex_model,
+            age_years,
+            stature_cm,
+            mass_kg,
+            scope,
+            build,
+            joints,
+            caps,
+            tasks,
+            note,
+            segments,
+            strength,
+        } = self;
+        let tasks = tasks.into_iter().map(step).collect::<Result<_, _>>()?;
+        Ok(Visit {
+            date,
+            sex_model,
+            age_years,
+            stature_cm,
+            mass_kg,
+            scope,
+            build,
+            joints,
+            caps,
+            tasks,
+            note,
+            segments,
+            strength,
+        })
+    }
 }
 
 #[derive(Clone, Copy, Serialize, Deserialize)]

@@ -1,7 +1,4 @@
-//! Between the structs of format 1 and the types the desk edits, both ways, nothing lost.
-//!
-//! Every struct is taken apart and put together by all its fields and every choice by all its words,
-//! so that a field added on one side does not compile until it has its place on the other.
+//! Between the structs of format 1 that are still those of today and the types the desk edits.
 
 use plumbfold_core::{
     measures::{self, PerJoint, Sides},
@@ -9,82 +6,16 @@ use plumbfold_core::{
     task as model,
 };
 
-use crate::{client, task};
+use crate::{
+    client,
+    saved::{Saved, fields, words},
+    task,
+};
 
 use super::{
     Ankle, Build, Caps, Client, Format, Hip, Joints, Knee, Scope, Segments, SexModel, Strength, Visit,
-    tasks::{Bend, Placement, Rule, Seen, StoppedBy, Support, Task},
+    tasks::{Bend, Placement, Rule, StoppedBy, Support},
 };
-
-/// A saved type and the type it stands for.
-pub(crate) trait Saved: Sized {
-    /// What the desk edits.
-    type Live;
-    /// From the file.
-    fn live(self) -> Self::Live;
-    /// To the file; nothing is checked here.
-    fn of(live: &Self::Live) -> Self;
-}
-
-impl<T: Saved> Saved for Option<T> {
-    type Live = Option<T::Live>;
-    fn live(self) -> Self::Live {
-        self.map(T::live)
-    }
-    fn of(live: &Self::Live) -> Self {
-        live.as_ref().map(T::of)
-    }
-}
-
-impl<T: Saved> Saved for Vec<T> {
-    type Live = Vec<T::Live>;
-    fn live(self) -> Self::Live {
-        self.into_iter().map(T::live).collect()
-    }
-    fn of(live: &Self::Live) -> Self {
-        live.iter().map(T::of).collect()
-    }
-}
-
-impl Saved for bool {
-    type Live = Self;
-    fn live(self) -> Self {
-        self
-    }
-    fn of(live: &Self) -> Self {
-        *live
-    }
-}
-
-macro_rules! fields {
-    ($saved:ty = $live:ty { $($field:ident),* $(,)? }) => {
-        impl Saved for $saved {
-            type Live = $live;
-            fn live(self) -> Self::Live {
-                let Self { $($field),* } = self;
-                Self::Live { $($field: $field.live()),* }
-            }
-            fn of(live: &Self::Live) -> Self {
-                let Self::Live { $($field),* } = live;
-                Self { $($field: Saved::of($field)),* }
-            }
-        }
-    };
-}
-
-macro_rules! words {
-    ($saved:ty = $live:ty { $($word:ident),* $(,)? }) => {
-        impl Saved for $saved {
-            type Live = $live;
-            fn live(self) -> Self::Live {
-                match self { $(Self::$word => <$live>::$word),* }
-            }
-            fn of(live: &Self::Live) -> Self {
-                match live { $(<$live>::$word => Self::$word),* }
-            }
-        }
-    };
-}
 
 /// A choice of ways to measure left and right, or not at all.
 macro_rules! ways {
@@ -109,7 +40,12 @@ macro_rules! ways {
     };
 }
 
-impl Saved for Client {
+/// Any task that stands for a task of today; older ones are brought up to it first.
+pub(crate) trait TaskOfToday: Saved<Live = task::Task> {}
+
+impl<T: Saved<Live = task::Task>> TaskOfToday for T {}
+
+impl<const FORMAT: u32, T: TaskOfToday> Saved for Client<FORMAT, T> {
     type Live = client::Client;
     fn live(self) -> Self::Live {
         let Self { format: Format, code, visits } = self;
@@ -122,7 +58,7 @@ impl Saved for Client {
 }
 
 fields!(
-    Visit = client::Visit {
+    Visit<T> = client::Visit where T: TaskOfToday {
         date,
         sex_model,
         age_years,
@@ -154,27 +90,6 @@ fields!(
 fields!(Joints = client::Joints { ankle, hip, knee, reach_limit_deg });
 fields!(Caps = client::Caps { knee_deg, hip_deg, load_kg, source });
 fields!(Strength = PerJoint<f64> { ankle, knee, hip, low_back });
-fields!(
-    Task = task::Task {
-        name,
-        placement,
-        load_kg,
-        footwear_drop_mm,
-        heel_raise_mm,
-        stance_width_cm,
-        toe_out_deg,
-        bend,
-        lean_limit_deg,
-        goal_thigh_deg,
-        weight_left_percent,
-        rule,
-        seen,
-        support,
-    }
-);
-fields!(
-    Seen = task::Seen { thigh_deg, shank_deg, trunk_deg, heels_lifted, pain_0_10, pain_from_thigh_deg, stopped_by }
-);
 fields!(Support = model::Support { edge_back, zone_back, aim, zone_front, edge_front });
 
 words!(SexModel = measures::Sex { Male, Female });

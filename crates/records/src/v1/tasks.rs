@@ -7,48 +7,59 @@ use serde::{
     de::{Error, Unexpected},
 };
 
-use crate::{bounded::within, problem::shown, text::SavedName};
-
-use super::Saved;
+use crate::{bounded::within, problem::shown, saved::Saved as _, text::SavedName};
 
 #[derive(Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]
-pub(super) struct Task {
-    pub(super) name: SavedName,
-    pub(super) placement: Placement,
-    pub(super) load_kg: within!(Load),
-    pub(super) footwear_drop_mm: within!(Footwear),
-    pub(super) heel_raise_mm: within!(HeelRaise),
-    pub(super) stance_width_cm: Option<within!(Stance)>,
-    pub(super) toe_out_deg: within!(ToeOut),
-    pub(super) bend: Bend,
-    pub(super) lean_limit_deg: Option<within!(Lean)>,
-    pub(super) goal_thigh_deg: within!(Goal),
-    pub(super) weight_left_percent: Option<within!(WeightLeft)>,
-    pub(super) rule: Rule,
-    pub(super) seen: Option<Seen>,
+pub(crate) struct Task {
+    pub(crate) name: SavedName,
+    pub(crate) placement: Placement,
+    pub(crate) load_kg: within!(Load),
+    pub(crate) footwear_drop_mm: within!(Footwear),
+    pub(crate) heel_raise_mm: within!(HeelRaise),
+    pub(crate) stance_width_cm: Option<within!(Stance)>,
+    pub(crate) toe_out_deg: within!(ToeOut),
+    pub(crate) bend: Bend,
+    pub(crate) lean_limit_deg: Option<within!(Lean)>,
+    pub(crate) goal_thigh_deg: within!(Goal),
+    pub(crate) weight_left_percent: Option<within!(WeightLeft)>,
+    pub(crate) rule: Rule,
+    pub(crate) seen: Option<Seen>,
     #[serde(default, skip_serializing_if = "Support::is_default")]
-    pub(super) support: Support,
+    pub(crate) support: Support,
+}
+
+/// A task of any format.
+pub(crate) trait Named {
+    fn name(&self) -> &str;
+}
+
+impl Named for Task {
+    fn name(&self) -> &str {
+        &self.name.0
+    }
 }
 
 /// At least one task, no name twice.
-pub(super) fn each_named<'de, D: Deserializer<'de>>(deserializer: D) -> Result<Vec<Task>, D::Error> {
-    let tasks = Vec::<Task>::deserialize(deserializer)?;
+pub(super) fn each_named<'de, D: Deserializer<'de>, T: Deserialize<'de> + Named>(
+    deserializer: D,
+) -> Result<Vec<T>, D::Error> {
+    let tasks = Vec::<T>::deserialize(deserializer)?;
     if tasks.is_empty() {
         return Err(D::Error::invalid_value(Unexpected::Other("no task"), &"at least one task"));
     }
     let mut names = HashSet::new();
-    match tasks.iter().find(|task| !names.insert(task.name.0.as_str())) {
+    match tasks.iter().find(|task| !names.insert(task.name())) {
         None => Ok(tasks),
         Some(task) => {
-            let found = format!("two tasks named \"{}\"", shown(&task.name.0));
+            let found = format!("two tasks named \"{}\"", shown(task.name()));
             Err(D::Error::invalid_value(Unexpected::Other(&found), &"a name of its own for each task"))
         }
     }
 }
 
 #[derive(Clone, Copy, Serialize, Deserialize)]
-pub(super) enum Placement {
+pub(crate) enum Placement {
     ArmsCrossed,
     ArmsForward,
     AtSides,
@@ -60,7 +71,7 @@ pub(super) enum Placement {
 }
 
 #[derive(Clone, Copy, Serialize, Deserialize)]
-pub(super) enum Bend {
+pub(crate) enum Bend {
     KeepSmall,
     KeepSome,
     Free,
@@ -69,7 +80,7 @@ pub(super) enum Bend {
 
 #[derive(Clone, Copy, Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]
-pub(super) enum Rule {
+pub(crate) enum Rule {
     Usual { slope: Option<within!(Slope)> },
     LeastEffort,
     ArmRatio(within!(Ratio)),
@@ -78,18 +89,18 @@ pub(super) enum Rule {
 
 #[derive(Clone, Copy, Serialize, Deserialize)]
 #[serde(deny_unknown_fields)]
-pub(super) struct Seen {
-    pub(super) thigh_deg: within!(SeenThigh),
-    pub(super) shank_deg: within!(SeenShank),
-    pub(super) trunk_deg: within!(SeenTrunk),
-    pub(super) heels_lifted: bool,
-    pub(super) pain_0_10: Option<within!(Pain)>,
-    pub(super) pain_from_thigh_deg: Option<within!(SeenThigh)>,
-    pub(super) stopped_by: Option<StoppedBy>,
+pub(crate) struct Seen {
+    pub(crate) thigh_deg: within!(SeenThigh),
+    pub(crate) shank_deg: within!(SeenShank),
+    pub(crate) trunk_deg: within!(SeenTrunk),
+    pub(crate) heels_lifted: bool,
+    pub(crate) pain_0_10: Option<within!(Pain)>,
+    pub(crate) pain_from_thigh_deg: Option<within!(SeenThigh)>,
+    pub(crate) stopped_by: Option<StoppedBy>,
 }
 
 #[derive(Clone, Copy, Serialize, Deserialize)]
-pub(super) enum StoppedBy {
+pub(crate) enum StoppedBy {
     Pain,
     Effort,
     Balance,
@@ -99,12 +110,12 @@ pub(super) enum StoppedBy {
 }
 
 #[derive(Clone, Copy, PartialEq, Serialize)]
-pub(super) struct Support {
-    pub(super) edge_back: Option<within!(SupportFraction)>,
-    pub(super) zone_back: within!(SupportFraction),
-    pub(super) aim: within!(SupportFraction),
-    pub(super) zone_front: within!(SupportFraction),
-    pub(super) edge_front: Option<within!(SupportFraction)>,
+pub(crate) struct Support {
+    pub(crate) edge_back: Option<within!(SupportFraction)>,
+    pub(crate) zone_back: within!(SupportFraction),
+    pub(crate) aim: within!(SupportFraction),
+    pub(crate) zone_front: within!(SupportFraction),
+    pub(crate) edge_front: Option<within!(SupportFraction)>,
 }
 
 /// The fields of [`Support`], their order not yet looked at.
@@ -144,7 +155,7 @@ impl Default for Support {
 }
 
 impl Support {
-    fn is_default(&self) -> bool {
+    pub(crate) fn is_default(&self) -> bool {
         *self == Self::default()
     }
 }

@@ -2,9 +2,9 @@
 
 use std::{path::Path, time::Instant};
 
-use plumbfold_records::{Code, Problem, SIZE_LIMIT_BYTES, read, write};
+use plumbfold_records::{Code, Compared, Felt, Problem, SIZE_LIMIT_BYTES, read, write};
 
-use crate::{FULL, client, problem, with};
+use crate::{FULL, FULL_2, client, problem, with, with_2};
 
 fn of_bytes(bytes: &[u8]) -> Problem {
     read(bytes, Path::new("x.ron")).expect_err("these bytes are no client file")
@@ -98,10 +98,10 @@ fn rows() -> Vec<Row> {
         row(with("    format: 1,\n", ""), 33, "format", "no value", "one"),
         row(with("heels_lifted: true, ", ""), 24, "visits[0].tasks[0].seen.heels_lifted", "no value", "one"),
         // Format.
-        row(with("format: 1", "format: 0"), 3, "format", "0", "format 1"),
-        row(with("format: 1", "format: -1"), 3, "format", "-1", "format 1"),
-        row(with("format: 1", "format: \"1\""), 3, "format", "\"1\"", "format 1"),
-        row(with("format: 1", "format: 5000000000"), 3, "format", "5000000000", "format 1"),
+        row(with("format: 1", "format: 0"), 3, "format", "0", "format 1 or 2"),
+        row(with("format: 1", "format: -1"), 3, "format", "-1", "format 1 or 2"),
+        row(with("format: 1", "format: \"1\""), 3, "format", "\"1\"", "format 1 or 2"),
+        row(with("format: 1", "format: 5000000000"), 3, "format", "5000000000", "format 1 or 2"),
         // Texts and dates.
         row(with("code: \"fixture-full\"", "code: \"\""), 4, "code", "an empty text", CODE),
         row(with("code: \"fixture-full\"", "code: \"a/b\""), 4, "code", "\"a/b\"", CODE),
@@ -176,10 +176,70 @@ fn before<'a>(piece: &str, text: &'a str) -> &'a str {
     text.split(piece).next().unwrap_or_default()
 }
 
+/// What format 2 adds, where it is not as it should be.
+fn rows_2() -> Vec<Row> {
+    let felt = "felt: Some((compared: Easier, depth_thigh_deg: Some(84.0), pain_0_10: Some(2)))";
+    let at_felt = |line, field, instead, value, allowed| row(with_2(felt, instead), line, field, value, allowed);
+    vec![
+        row(with_2("Some(84.0)", "Some(141)"), 25, "visits[0].tasks[0].felt.depth_thigh_deg", "141", "0 to 140°"),
+        row(with_2("Some(84.0)", "84.0"), 25, "visits[0].tasks[0].felt.depth_thigh_deg", "84.0", "None or Some(…)"),
+        row(with_2("Some(2))", "Some(10.5))"), 25, "visits[0].tasks[0].felt.pain_0_10", "10.5", "0 to 10"),
+        row(with_2("Easier", "Better"), 25, "visits[0].tasks[0].felt.compared", "Better", "Easier, Same or Harder"),
+        row(
+            with_2("pain_at: Some(Knee)", "pain_at: Some(Back)"),
+            24,
+            "visits[0].tasks[0].seen.pain_at",
+            "Back",
+            "Ankle, Knee, Hip or LowBack",
+        ),
+        row(
+            with_2("pain_at: Some(Knee)", "pain_at: Knee"),
+            24,
+            "visits[0].tasks[0].seen.pain_at",
+            "Knee",
+            "None or Some(…)",
+        ),
+        row(
+            with_2("pain_at: Some(Knee)", "pain_at: Some(Knee), pain_at: None"),
+            24,
+            "visits[0].tasks[0].seen.pain_at",
+            "the field twice",
+            "each field once",
+        ),
+        at_felt(25, "visits[0].tasks[0].felt.compared", "felt: Some((pain_0_10: Some(2)))", "no value", "one"),
+        at_felt(25, "visits[0].tasks[0].felt", "felt: (compared: Easier)", "(compared", "None or Some(…)"),
+        at_felt(25, "visits[0].tasks[0].felt", "felt: Some(Easier)", "Easier", "fields in ( )"),
+        at_felt(
+            25,
+            "visits[0].tasks[0].felt.depth_deg",
+            "felt: Some((compared: Same, depth_deg: Some(84.0)))",
+            "a field not known here",
+            "compared, depth_thigh_deg or pain_0_10",
+        ),
+        at_felt(25, "visits[0].tasks[0].felt", "felt: None, felt: None", "the field twice", "each field once"),
+        // Format 1 does not know them.
+        row(
+            with("stopped_by: Some(Stiffness)", "pain_at: Some(Knee)"),
+            24,
+            "visits[0].tasks[0].seen.pain_at",
+            "a field not known here",
+            "thigh_deg, shank_deg, trunk_deg, heels_lifted, pain_0_10, pain_from_thigh_deg or stopped_by",
+        ),
+        row(
+            with("rule: HeldShank(25.0)", "rule: HeldShank(25.0), felt: None"),
+            28,
+            "visits[0].tasks[1].felt",
+            "a field not known here",
+            "name, placement, load_kg, footwear_drop_mm, heel_raise_mm, stance_width_cm, toe_out_deg, bend, \
+             lean_limit_deg, goal_thigh_deg, weight_left_percent, rule, seen or support",
+        ),
+    ]
+}
+
 #[test]
 fn every_bad_text_names_line_field_value_and_what_is_allowed() {
     let mut wrong = Vec::new();
-    for (text, line, field, value, allowed) in rows() {
+    for (text, line, field, value, allowed) in rows().into_iter().chain(rows_2()) {
         let found = problem(&text);
         assert_one_sentence(&found);
         let parts = (found.line, found.field.as_deref(), found.value.as_str(), found.allowed.as_str());
@@ -189,6 +249,19 @@ fn every_bad_text_names_line_field_value_and_what_is_allowed() {
         }
     }
     assert!(wrong.is_empty(), "{}", wrong.join("\n"));
+}
+
+#[test]
+fn what_format_1_refuses_format_2_refuses_in_the_same_words() {
+    let mut compared = 0;
+    for (text, ..) in rows() {
+        let in_2 = text.replace("format: 1", "format: 2");
+        if in_2 != text {
+            assert_eq!(problem(&in_2), problem(&text), "{text}");
+            compared += 1;
+        }
+    }
+    assert!(compared > 30, "{compared}");
 }
 
 fn assert_one_sentence(problem: &Problem) {
@@ -225,8 +298,10 @@ fn bytes_that_are_no_text_are_refused() {
 
 #[test]
 fn every_prefix_of_a_file_is_a_problem() {
-    for (length, _) in FULL.trim_end().char_indices() {
-        assert_one_sentence(&of_bytes(&FULL.as_bytes()[..length]));
+    for full in [FULL, FULL_2] {
+        for (length, _) in full.trim_end().char_indices() {
+            assert_one_sentence(&of_bytes(&full.as_bytes()[..length]));
+        }
     }
 }
 
@@ -234,7 +309,7 @@ fn every_prefix_of_a_file_is_a_problem() {
 fn floods_of_brackets_are_refused_quickly_and_without_a_deep_stack() {
     let mut texts = Vec::new();
     for open in ["(", "[", "{", "[(", "(a:", "Some(", "{1:", "/*", "\""] {
-        for start in ["", "(a: ", "(format: 1, code: ", "(format: 1, x: ", "(format: 2, x: "] {
+        for start in ["", "(a: ", "(format: 1, code: ", "(format: 1, x: ", "(format: 2, x: ", "(format: 3, x: "] {
             for size in [10_000_000, SIZE_LIMIT_BYTES - 64] {
                 texts.push(format!("{start}{}", open.repeat(size / open.len())));
             }
@@ -253,7 +328,7 @@ fn floods_of_brackets_are_refused_quickly_and_without_a_deep_stack() {
         } else if let Err(problem) = opened {
             assert_one_sentence(&problem);
         } else {
-            assert!(head.starts_with("(format: 2"), "{head}…");
+            assert!(head.starts_with("(format: 3"), "{head}…");
         }
     }
 }
@@ -277,6 +352,21 @@ fn what_could_not_be_read_is_not_written() {
         (|client| client.visits[0].note = "ä".repeat(20_001), "visits[0].note", "20001 characters"),
         (|client| client.visits[0].caps.source = "ä".repeat(201), "visits[0].caps.source", "201 characters"),
         (|client| client.visits[0].tasks[0].support.aim = 0.1, "visits[0].tasks[0].support", "0.35 followed by 0.1"),
+        (
+            |client| client.visits[0].tasks[1].felt = Some(felt(Some(f64::NAN), None)),
+            "visits[0].tasks[1].felt.depth_thigh_deg",
+            "NaN",
+        ),
+        (
+            |client| client.visits[0].tasks[1].felt = Some(felt(Some(140.5), None)),
+            "visits[0].tasks[1].felt.depth_thigh_deg",
+            "140.5",
+        ),
+        (
+            |client| client.visits[0].tasks[1].felt = Some(felt(None, Some(-1.0))),
+            "visits[0].tasks[1].felt.pain_0_10",
+            "-1.0",
+        ),
     ] {
         let mut client = client(FULL);
         change(&mut client);
@@ -284,6 +374,10 @@ fn what_could_not_be_read_is_not_written() {
         assert_eq!((found.field.as_deref(), found.value.as_str(), found.line), (Some(field), value, None), "{found}");
         assert_eq!(found.file, Path::new("fixture-full.ron"));
     }
+}
+
+fn felt(depth_thigh_deg: Option<f64>, pain_0_10: Option<f64>) -> Felt {
+    Felt { compared: Compared::Same, depth_thigh_deg, pain_0_10 }
 }
 
 #[test]

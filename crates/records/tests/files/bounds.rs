@@ -3,13 +3,13 @@
 use plumbfold_core::bounds::{Field, bounds};
 use plumbfold_records::write;
 
-use crate::{client, problem, with};
+use crate::{FULL, FULL_2, client, problem, replaced};
 
 /// Where a field of the bounds table stands in the full file: the piece of text, the same with `@`
 /// for the number, the path a problem names, and the bounds the format documents.
 type Place = (&'static str, &'static str, &'static str, f64, f64);
 
-/// Every place where the file holds a number of this field.
+/// Every place where the full file of either format holds a number of this field.
 fn places(field: Field) -> &'static [Place] {
     match field {
         Field::Stature => &[("stature_cm: 168.25", "stature_cm: @", "visits[0].stature_cm", 100.0, 230.0)],
@@ -129,63 +129,87 @@ fn places(field: Field) -> &'static [Place] {
     }
 }
 
+/// The places that format 2 adds.
+fn places_added(field: Field) -> &'static [Place] {
+    match field {
+        Field::Goal => &[(
+            "depth_thigh_deg: Some(84.0)",
+            "depth_thigh_deg: Some(@)",
+            "visits[0].tasks[0].felt.depth_thigh_deg",
+            0.0,
+            140.0,
+        )],
+        Field::Pain => &[("pain_0_10: Some(2)", "pain_0_10: Some(@)", "visits[0].tasks[0].felt.pain_0_10", 0.0, 10.0)],
+        _ => &[],
+    }
+}
+
+/// Every place of every format, with the full file it is to be looked for in.
+fn all_places() -> impl Iterator<Item = (&'static str, Field, &'static Place)> {
+    Field::ALL.iter().flat_map(|&field| {
+        let of = move |text, places: &'static [Place]| places.iter().map(move |place| (text, field, place));
+        of(FULL, places(field)).chain(of(FULL_2, places(field))).chain(of(FULL_2, places_added(field)))
+    })
+}
+
 const KNEE_TO_WALL: &str = "KneeToWall(left_cm: Some(-1.5), right_cm: Some(8))";
 const KNEE_TO_CHEST: &str = "KneeToChest(left: Some(112.0), right: Some(118.0))";
 
-fn typed(place: &Place, number: &str) -> String {
-    with(place.0, &place.1.replace('@', number))
+fn typed(text: &str, place: &Place, number: &str) -> String {
+    replaced(text, place.0, &place.1.replace('@', number))
 }
 
 #[test]
 fn the_table_holds_the_documented_bounds() {
+    for (_, field, &(_, _, path, min, max)) in all_places() {
+        assert_eq!((bounds(field).min, bounds(field).max), (min, max), "{path}");
+    }
+}
+
+#[test]
+fn every_field_of_the_table_has_a_place() {
     for &field in Field::ALL {
-        for &(_, _, path, min, max) in places(field) {
-            assert_eq!((bounds(field).min, bounds(field).max), (min, max), "{path}");
-        }
+        assert!(all_places().any(|(_, of, _)| of == field), "{field:?}");
     }
 }
 
 #[test]
 fn both_ends_are_read_and_what_lies_beyond_is_refused() {
-    for &field in Field::ALL {
-        for place in places(field) {
-            let &(_, _, path, min, max) = place;
-            for end in [min, max] {
-                let text = typed(place, &format!("{end:?}"));
-                if field == Field::SupportFraction {
-                    // In bounds, though out of order for some of the five.
-                    if let Err(refused) = plumbfold_records::read(text.as_bytes(), "x.ron".as_ref()) {
-                        assert_eq!(refused.allowed, "fractions in rising order from heel to toe", "{path} = {end}");
-                    }
-                } else {
-                    // And it can be written again.
-                    assert!(write(&client(&text)).is_ok(), "{path} = {end}");
+    for (full, field, place) in all_places() {
+        let &(_, _, path, min, max) = place;
+        for end in [min, max] {
+            let text = typed(full, place, &format!("{end:?}"));
+            if field == Field::SupportFraction {
+                // In bounds, though out of order for some of the five.
+                if let Err(refused) = plumbfold_records::read(text.as_bytes(), "x.ron".as_ref()) {
+                    assert_eq!(refused.allowed, "fractions in rising order from heel to toe", "{path} = {end}");
                 }
+            } else {
+                // And it can be written again.
+                assert!(write(&client(&text)).is_ok(), "{path} = {end}");
             }
-            for beyond in [min.next_down(), max.next_up(), min - 1.0, max + 1.0, -1e300, 1e300] {
-                let number = format!("{beyond:?}");
-                let refused = problem(&typed(place, &number));
-                assert_eq!(refused.field.as_deref(), Some(path), "{number}");
-                assert_eq!(refused.value, number, "{path}");
-                assert_eq!(refused.allowed, bounds(field).allowed(), "{path}");
-            }
+        }
+        for beyond in [min.next_down(), max.next_up(), min - 1.0, max + 1.0, -1e300, 1e300] {
+            let number = format!("{beyond:?}");
+            let refused = problem(&typed(full, place, &number));
+            assert_eq!(refused.field.as_deref(), Some(path), "{number}");
+            assert_eq!(refused.value, number, "{path}");
+            assert_eq!(refused.allowed, bounds(field).allowed(), "{path}");
         }
     }
 }
 
 #[test]
 fn what_is_no_finite_number_is_refused_in_every_field() {
-    for &field in Field::ALL {
-        for place in places(field) {
-            let path = place.2;
-            for number in
-                ["NaN", "-NaN", "inf", "-inf", "1e400", "-1e400", "\"40\"", "true", "(1)", "forty", "NaNf64", "inff32"]
-            {
-                let refused = problem(&typed(place, number));
-                assert_eq!(refused.field.as_deref(), Some(path), "{number}");
-                assert_eq!(refused.allowed, bounds(field).allowed(), "{path} = {number}");
-                assert!(!refused.value.is_empty(), "{path} = {number}");
-            }
+    for (full, field, place) in all_places() {
+        let path = place.2;
+        for number in
+            ["NaN", "-NaN", "inf", "-inf", "1e400", "-1e400", "\"40\"", "true", "(1)", "forty", "NaNf64", "inff32"]
+        {
+            let refused = problem(&typed(full, place, number));
+            assert_eq!(refused.field.as_deref(), Some(path), "{number}");
+            assert_eq!(refused.allowed, bounds(field).allowed(), "{path} = {number}");
+            assert!(!refused.value.is_empty(), "{path} = {number}");
         }
     }
 }

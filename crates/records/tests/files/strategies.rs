@@ -7,7 +7,8 @@ use plumbfold_core::{
     task::Placement,
 };
 use plumbfold_records::{
-    Ankle, Bend, Build, Caps, Client, Code, Date, Hip, Joints, Knee, Rule, Seen, StoppedBy, Support, Task, Visit,
+    Ankle, Bend, Build, Caps, Client, Code, Compared, Date, Felt, Hip, Joints, Knee, PainAt, Rule, Seen, StoppedBy,
+    Support, Task, Visit,
 };
 use proptest::{
     collection::vec,
@@ -112,19 +113,23 @@ fn support() -> impl Strategy<Value = Support> {
 
 fn seen() -> impl Strategy<Value = Seen> {
     let angles = (number(Field::SeenThigh), number(Field::SeenShank), number(Field::SeenTrunk));
-    let rest =
-        (any::<bool>(), maybe(Field::Pain), maybe(Field::SeenThigh), option::of(select(StoppedBy::ALL.to_vec())));
+    let rest = (
+        any::<bool>(),
+        maybe(Field::Pain),
+        maybe(Field::SeenThigh),
+        option::of(select(PainAt::ALL.to_vec())),
+        option::of(select(StoppedBy::ALL.to_vec())),
+    );
     (angles, rest).prop_map(
-        |((thigh_deg, shank_deg, trunk_deg), (heels_lifted, pain_0_10, pain_from_thigh_deg, stopped_by))| Seen {
-            thigh_deg,
-            shank_deg,
-            trunk_deg,
-            heels_lifted,
-            pain_0_10,
-            pain_from_thigh_deg,
-            stopped_by,
+        |((thigh_deg, shank_deg, trunk_deg), (heels_lifted, pain_0_10, pain_from_thigh_deg, pain_at, stopped_by))| {
+            Seen { thigh_deg, shank_deg, trunk_deg, heels_lifted, pain_0_10, pain_from_thigh_deg, pain_at, stopped_by }
         },
     )
+}
+
+fn felt() -> impl Strategy<Value = Felt> {
+    (select(Compared::ALL.to_vec()), maybe(Field::Goal), maybe(Field::Pain))
+        .prop_map(|(compared, depth_thigh_deg, pain_0_10)| Felt { compared, depth_thigh_deg, pain_0_10 })
 }
 
 fn task() -> impl Strategy<Value = Task> {
@@ -150,12 +155,13 @@ fn task() -> impl Strategy<Value = Task> {
     );
     let choices = (bend, maybe(Field::Lean), number(Field::Goal), maybe(Field::WeightLeft), rule);
     // A point that is not "." for any character keeps names on one line.
-    ("[^\\p{C}\\p{Z}][^\\p{C}]{0,20}", set_up, choices, option::of(seen()), support()).prop_map(
+    ("[^\\p{C}\\p{Z}][^\\p{C}]{0,20}", set_up, choices, option::of(seen()), option::of(felt()), support()).prop_map(
         |(
             name,
             (placement, load_kg, footwear_drop_mm, heel_raise_mm, stance_width_cm, toe_out_deg),
             (bend, lean_limit_deg, goal_thigh_deg, weight_left_percent, rule),
             seen,
+            felt,
             support,
         )| Task {
             name,
@@ -171,6 +177,7 @@ fn task() -> impl Strategy<Value = Task> {
             weight_left_percent,
             rule,
             seen,
+            felt,
             support,
         },
     )
