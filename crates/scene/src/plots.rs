@@ -15,7 +15,7 @@ pub fn arms(study: &Study, now: Option<Angle>) -> Chart {
     build(
         study,
         now,
-        "Arms through the descent, cm",
+        "Lever arms, cm",
         "cm",
         vec![
             curve(study, "hip", Role::Hip, Stroke::Solid, arm(|r| r.hip_arm_m)),

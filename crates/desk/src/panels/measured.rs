@@ -27,7 +27,7 @@ pub struct Measured<'a> {
 }
 
 const FIELD: f32 = 84.0;
-const HALF: f32 = 62.0;
+const HALF: f32 = 58.0;
 const WIDE: f32 = 150.0;
 
 /// Shows the left side.
@@ -166,7 +166,7 @@ fn ranges(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
     let used = |angle: Option<Angle>, from: Option<limits::Origin>| match (angle, from) {
         (Some(a), Some(limits::Origin::Measured)) => format::deg(a),
         (Some(a), Some(limits::Origin::Assumed)) => format!("≈ {}", format::deg(a)),
-        (Some(a), Some(limits::Origin::Precaution)) => format!("{} cap", format::deg(a)),
+        (Some(a), Some(limits::Origin::Precaution)) => format!("cap {}", format::deg(a)),
         _ => String::new(),
     };
     let ankle_way = match v.joints.ankle {

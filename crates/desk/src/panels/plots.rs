@@ -73,14 +73,17 @@ fn grid<'a>(axis: &Axis, most: usize) -> impl Fn(egui_plot::GridInput) -> Vec<eg
     move |_| ticks.iter().map(|(value, _)| egui_plot::GridMark { value: *value, step_size: step }).collect()
 }
 
-fn tick_labels<'a>(
-    axis: &Axis,
-    most: usize,
-) -> impl Fn(egui_plot::GridMark, &std::ops::RangeInclusive<f64>) -> String + use<'a> {
+/// Ticks and their labels as the sheet has them, in full strength at any distance.
+fn ticks<'a>(hints: egui_plot::AxisHints<'a>, axis: &Axis, most: usize, theme: Theme) -> egui_plot::AxisHints<'a> {
     let ticks = axis.ticks(most);
-    move |mark, _| {
+    let text = move |mark: egui_plot::GridMark, _: &std::ops::RangeInclusive<f64>| {
         ticks.iter().find(|(v, _)| (v - mark.value).abs() < 1e-9).map_or_else(String::new, |(_, text)| text.clone())
-    }
+    };
+    hints
+        .formatter(text)
+        .label_spacing(2.0..=4.0)
+        .tick_label_color(color(theme, Role::InkSoft))
+        .tick_label_font(font(11.0, Weight::Regular))
 }
 
 fn one(ui: &mut Ui, c: &Chart, size: egui::Vec2, theme: Theme, out: &mut Vec<Action>) {
@@ -100,8 +103,8 @@ fn one(ui: &mut Ui, c: &Chart, size: egui::Vec2, theme: Theme, out: &mut Vec<Act
         .label_formatter(|_| None)
         .x_grid_spacer(grid(&c.x, 6))
         .y_grid_spacer(grid(&c.y, 4))
-        .x_axis_formatter(tick_labels(&c.x, 6))
-        .y_axis_formatter(tick_labels(&c.y, 4))
+        .custom_x_axes(vec![ticks(egui_plot::AxisHints::new_x(), &c.x, 6, theme)])
+        .custom_y_axes(vec![ticks(egui_plot::AxisHints::new_y(), &c.y, 4, theme)])
         .grid_color(color(theme, Role::Grid))
         .sense(egui::Sense::click_and_drag())
         .show(ui, |plot| {
@@ -165,19 +168,43 @@ fn bands(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
     }
 }
 
-/// Each curve's name beside it, at the height where it ends nearest to no other.
+/// Each curve's name above or below it, where it is farthest from every other curve and name.
 fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
-    let span = c.y.to - c.y.from;
+    let (width, height) = (c.x.to - c.x.from, c.y.to - c.y.from);
+    let curve_at = |s: &chart::Series, x: f64| {
+        s.points.iter().min_by(|a, b| (a.0 - x).abs().total_cmp(&(b.0 - x).abs())).map(|p| p.1)
+    };
     let mut taken: Vec<(f64, f64)> = Vec::new();
     for s in &c.series {
-        let spot = [0.30, 0.5, 0.65, 0.8, 0.2].into_iter().find_map(|f| {
-            let &(x, y) = s.points.get((f * s.points.len() as f64) as usize)?;
-            let y = y + span * 0.09;
-            let free =
-                taken.iter().all(|t| (t.0 - x).abs() > (c.x.to - c.x.from) * 0.24 || (t.1 - y).abs() > span * 0.13);
-            (free && y < c.y.to - span * 0.04).then_some((x, y))
-        });
-        let Some((x, y)) = spot else { continue };
+        let mut best: Option<(f64, (f64, f64))> = None;
+        for share in [0.18, 0.28, 0.38, 0.48, 0.58, 0.68] {
+            let x = c.x.from + share * width;
+            let Some(at) = curve_at(s, x) else { continue };
+            for offset in [0.10, -0.10, 0.16, -0.16] {
+                let y = at + offset * height;
+                if y < c.y.from + 0.06 * height || y > c.y.to - 0.06 * height {
+                    continue;
+                }
+                // the name covers some width: look along it
+                let along = [-0.11, -0.05, 0.0, 0.05, 0.11].map(|d| x + d * width);
+                let to_curves = c
+                    .series
+                    .iter()
+                    .flat_map(|o| along.iter().filter_map(move |&x| curve_at(o, x)))
+                    .map(|v| (v - y).abs() / height)
+                    .fold(f64::INFINITY, f64::min);
+                let to_names = taken
+                    .iter()
+                    .filter(|t| (t.0 - x).abs() < 0.45 * width)
+                    .map(|t| (t.1 - y).abs() / height)
+                    .fold(f64::INFINITY, f64::min);
+                let free = to_curves.min(to_names).min(0.12) - 0.1 * offset.abs();
+                if best.is_none_or(|b| free > b.0 + 1e-9) {
+                    best = Some((free, (x, y)));
+                }
+            }
+        }
+        let Some((_, (x, y))) = best else { continue };
         taken.push((x, y));
         let text = RichText::new(&s.name).font(font(11.5, Weight::SemiBold)).color(color(theme, s.role));
         plot.text(Text::new("", PlotPoint::new(x, y), text));

@@ -60,7 +60,9 @@ fn takes(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
     let single = &m.results.reasons.takes.single;
     let pain = PainLine::of(m);
     for (group, title) in [(Group::Today, "Today"), (Group::Weeks, "Weeks, uncertain"), (Group::Choices, "Choices")] {
-        let rows: Vec<&Take> = single.iter().filter(|t| t.kind.group() == group).collect();
+        // what needs no change at all says nothing
+        let rows: Vec<&Take> =
+            single.iter().filter(|t| t.kind.group() == group && t.outcome.enough().is_none_or(|a| a > 0.0)).collect();
         if rows.is_empty() {
             continue;
         }
