@@ -106,6 +106,26 @@ pub struct Change {
     pub amount: f64,
 }
 
+impl Change {
+    /// The same change as a person sets it, never less: wedges to the next 5 mm, stances to the next
+    /// whole centimetre of width, counterweights to the next half kilogram, angles to the next degree.
+    #[must_use]
+    pub fn as_set(&self, c: &Case) -> Self {
+        let up = |v: f64, to: f64| ((v / to - 1e-6).ceil() * to).max(0.0);
+        let amount = match self.kind {
+            Kind::HeelRaise => up(self.amount, 5.0),
+            Kind::WiderStance => {
+                let now_cm = 200.0 * c.stand.half_stance_m;
+                up(now_cm + self.amount, 1.0) - now_cm
+            }
+            Kind::Counterweight => up(self.amount, 0.5),
+            Kind::Placement(_) => self.amount,
+            Kind::Ankle | Kind::Hip | Kind::Bend | Kind::Lean => up(self.amount, 1.0),
+        };
+        Self { amount, ..*self }
+    }
+}
+
 /// Whether a change is enough.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Outcome {

@@ -159,6 +159,8 @@ fn asked_by_keys(ctx: &Context, state: &State) -> Vec<Action> {
         out.push(Action::Run(Command::ClientView));
     } else if escape && state.view.straighten.is_some() {
         out.push(Action::View(ViewChange::Straighten(None)));
+    } else if escape && state.view.trying.is_some() {
+        out.push(Action::View(ViewChange::Try(None)));
     } else if escape && state.view.matching {
         out.push(Action::Run(Command::MatchSeen));
     }

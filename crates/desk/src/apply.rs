@@ -167,30 +167,28 @@ fn edit_document(doc: &mut Document, change: Edit) -> Result<(), String> {
     Ok(())
 }
 
-/// A task after the present one with changes made, as a person sets them: wedges up to the next
-/// 5 mm, stances to the next centimetre, counterweights to the next half kilogram. Ranges gained in
-/// weeks are no set-up and are left out.
+/// A task after the present one with changes made. Ranges gained in weeks are no set-up and are left
+/// out.
 fn keep(doc: &mut Document, changes: &[Change]) {
     let mut task = doc.task().clone();
     let under_hips_cm = 200.0 * tables::HIP_HALF_SPACING * doc.visit().stature_cm / 100.0;
-    let up = |v: f64, to: f64| ((v / to - 1e-6).ceil() * to).max(0.0);
+    let tenth = |v: f64| (v * 10.0).round() / 10.0;
     let mut names = Vec::new();
     for c in changes {
         match c.kind {
             Kind::HeelRaise => {
                 let most = bounds(Field::HeelRaise).max;
-                task.heel_raise_mm = (task.heel_raise_mm + up(c.amount, 5.0)).min(most);
+                task.heel_raise_mm = tenth(task.heel_raise_mm + c.amount).min(most);
             }
             Kind::WiderStance => {
                 let now = task.stance_width_cm.unwrap_or(under_hips_cm);
-                let wide = up(now + c.amount, 1.0);
-                task.toe_out_deg = takes::toe_out_with(Angle::from_deg(task.toe_out_deg), wide - now).deg();
-                task.toe_out_deg = (task.toe_out_deg * 10.0).round() / 10.0;
-                task.stance_width_cm = Some(wide);
+                let toes = takes::toe_out_with(Angle::from_deg(task.toe_out_deg), c.amount);
+                task.toe_out_deg = tenth(toes.deg());
+                task.stance_width_cm = Some(tenth(now + c.amount));
             }
             Kind::Counterweight => {
                 task.placement = Placement::ArmsForward;
-                task.load_kg = up(c.amount, 0.5);
+                task.load_kg = tenth(c.amount);
             }
             Kind::Placement(p) => {
                 task.placement = p;
@@ -200,11 +198,11 @@ fn keep(doc: &mut Document, changes: &[Change]) {
             }
             Kind::Bend => {
                 let most = bounds(Field::Bend).max;
-                task.bend = plumbfold_records::Bend::Degrees((bend_deg(task.bend) + up(c.amount, 1.0)).min(most));
+                task.bend = plumbfold_records::Bend::Degrees(tenth(bend_deg(task.bend) + c.amount).min(most));
             }
             Kind::Lean => {
                 let most = bounds(Field::Lean).max;
-                task.lean_limit_deg = task.lean_limit_deg.map(|l| (l + up(c.amount, 1.0)).min(most));
+                task.lean_limit_deg = task.lean_limit_deg.map(|l| tenth(l + c.amount).min(most));
             }
             Kind::Ankle | Kind::Hip => continue,
         }

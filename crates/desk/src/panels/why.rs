@@ -73,7 +73,7 @@ fn takes(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
         }
         if group == Group::Today {
             if let Some(p) = &m.results.reasons.takes.pair {
-                let changes = p.changes.to_vec();
+                let changes: Vec<Change> = p.changes.iter().map(|c| c.as_set(case)).collect();
                 let text = why::pair_words(p, case);
                 line(ui, m, &text, "enough", &changes, p.at_goal.as_ref(), pain.as_ref(), out);
             }
@@ -88,7 +88,9 @@ fn takes(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
 
 fn row(ui: &mut Ui, m: &Meaning<'_>, t: &Take, pain: Option<&PainLine>, out: &mut Vec<Action>) {
     let case = &m.results.study.case;
-    let changes = vec![Change { kind: t.kind, amount: t.outcome.amount() }];
+    // what is not enough by itself is shown at its best, as computed
+    let exact = Change { kind: t.kind, amount: t.outcome.amount() };
+    let changes = vec![if t.outcome.enough().is_some() { exact.as_set(case) } else { exact }];
     let at_goal = t.at_goal.as_ref();
     line(ui, m, &why::kind(t.kind), &why::outcome(t, case), &changes, at_goal, pain, out);
 }

@@ -115,21 +115,19 @@ pub fn kind(k: Kind) -> String {
 /// An amount as people set it: wedges up to the next 5 mm, stances as a width with their toe-out.
 #[must_use]
 pub fn amount(change: &Change, case: &Case) -> String {
-    let a = change.amount;
+    let set = change.as_set(case);
     match change.kind {
-        Kind::HeelRaise => format!("{} mm more", format::number((a / 5.0 - 1e-6).ceil().max(0.0) * 5.0, 0)),
-        Kind::WiderStance => case.changed(change).map_or_else(
-            |_| format!("{} cm more", format::number(a.ceil(), 0)),
+        Kind::HeelRaise => format!("{} mm more", format::number(set.amount, 0)),
+        Kind::WiderStance => case.changed(&set).map_or_else(
+            |_| format!("{} cm more", format::number(set.amount, 0)),
             |c| {
                 let stand = c.stand();
                 format!("{}, toes out {}", format::cm(2.0 * stand.half_stance_m), format::deg(stand.toe_out))
             },
         ),
-        Kind::Counterweight => format!("near {}", format::kg((a * 2.0).round() / 2.0)),
+        Kind::Counterweight => format!("near {}", format::kg(set.amount)),
         Kind::Placement(_) => "enough".to_owned(),
-        Kind::Ankle | Kind::Hip | Kind::Bend | Kind::Lean => {
-            format!("+{}°", format::number((a - 1e-6).ceil().max(0.0), 0))
-        }
+        Kind::Ankle | Kind::Hip | Kind::Bend | Kind::Lean => format!("+{}°", format::number(set.amount, 0)),
     }
 }
 
