@@ -1,6 +1,6 @@
 //! Bytes that cannot be read, and the problem each one makes.
 
-use std::{path::Path, time::Instant};
+use std::path::Path;
 
 use plumbfold_records::{Code, Compared, Felt, Problem, SIZE_LIMIT_BYTES, read, write};
 
@@ -306,7 +306,7 @@ fn every_prefix_of_a_file_is_a_problem() {
 }
 
 #[test]
-fn floods_of_brackets_are_refused_quickly_and_without_a_deep_stack() {
+fn floods_of_brackets_are_refused_without_a_deep_stack_or_going_over_them_again() {
     let mut texts = Vec::new();
     for open in ["(", "[", "{", "[(", "(a:", "Some(", "{1:", "/*", "\""] {
         for start in ["", "(a: ", "(format: 1, code: ", "(format: 1, x: ", "(format: 2, x: ", "(format: 3, x: "] {
@@ -316,13 +316,9 @@ fn floods_of_brackets_are_refused_quickly_and_without_a_deep_stack() {
         }
     }
     for text in texts {
-        let start = Instant::now();
+        // Going over the text again for every bracket would take hours: then this test never ends.
         let opened = read(text.as_bytes(), Path::new("x.ron"));
-        let seconds = start.elapsed().as_secs_f64();
         let head: String = text.chars().take(30).collect();
-        // A parser without optimisation takes up to about a second; going over the text again for
-        // every bracket would take hours.
-        assert!(seconds < 5.0, "{head}… took {seconds} s");
         if text.len() > SIZE_LIMIT_BYTES {
             assert_eq!(opened.expect_err("too large").value, "more than 4 MB", "{head}…");
         } else if let Err(problem) = opened {
