@@ -239,7 +239,9 @@ fn text(chosen: &Chosen, case: &plumbfold_core::Case, r: &Reasons) -> String {
     part("How much the back may bend", vec![why::by_bend(&r.by_bend)]);
     part("Shape or range", vec![why::shape_or_range(&r.shape_or_range)]);
     let goal = case.task().goal;
-    part(&why::takes_title(goal), r.takes.single.iter().map(|t| why::take(t, case)).collect());
+    let none = why::nothing_reaches(&r.takes).map(str::to_owned);
+    let each = r.takes.single.iter().map(|t| why::take(t, case));
+    part(&why::takes_title(goal), none.into_iter().chain(each).collect());
     part("Together", r.takes.pair.iter().map(|p| why::pair(p, case)).collect());
     part("Cautions", vec![words::notices::STANDING_CAUTION.to_owned(), words::notices::NET_MOMENTS_CAUTION.to_owned()]);
     lines.push(String::new());

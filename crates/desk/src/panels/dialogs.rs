@@ -85,7 +85,7 @@ fn exists(ui: &mut Ui, path: &std::path::Path, out: &mut Vec<Action>) {
 }
 
 fn keys(ui: &mut Ui, out: &mut Vec<Action>) {
-    ui.set_width(460.0);
+    ui.set_width(520.0);
     title(ui, "Keys");
     egui::Grid::new("keys").num_columns(3).spacing([16.0, 4.0]).show(ui, |ui| {
         for command in Command::ALL {

@@ -57,6 +57,9 @@ fn takes(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
     if m.results.study.depths.steady.is_some_and(|d| d >= case.task().goal) {
         ui.label("The goal is within reach on mid-foot; nothing needs to change.");
     }
+    if let Some(sentence) = why::nothing_reaches(&m.results.reasons.takes) {
+        ui.label(sentence);
+    }
     let single = &m.results.reasons.takes.single;
     let pain = PainLine::of(m);
     for (group, title) in [(Group::Today, "Today"), (Group::Weeks, "Weeks, uncertain"), (Group::Choices, "Choices")] {
@@ -109,9 +112,17 @@ fn line(
     let above = pain.and_then(|p| p.above(at_goal?));
     let trying = m.state.view.trying.as_deref() == Some(changes);
     let ink = color(m.theme, if above.is_some() { Role::InkSoft } else { Role::Ink });
-    ui.horizontal(|ui| {
+    let beside = if changes.len() > 1 {
+        // two changes need the whole width for their names
         ui.label(RichText::new(name).color(ink));
-        ui.with_layout(egui::Layout::right_to_left(egui::Align::Center), |ui| {
+        "Together"
+    } else {
+        name
+    };
+    ui.allocate_ui_with_layout(
+        egui::vec2(ui.available_width(), 22.0),
+        egui::Layout::right_to_left(egui::Align::Center),
+        |ui| {
             if trying {
                 let can_keep = changes.iter().any(|c| !matches!(c.kind, Kind::Ankle | Kind::Hip));
                 if ui.button("back").on_hover_text("Show the set-up as it is").clicked() {
@@ -128,9 +139,12 @@ fn line(
                     out.push(Action::View(ViewChange::Try(Some(changes.to_vec()))));
                 }
             }
-            ui.add(egui::Label::new(RichText::new(outcome).color(ink)).truncate());
-        });
-    });
+            ui.label(RichText::new(outcome).color(ink));
+            ui.with_layout(egui::Layout::left_to_right(egui::Align::Center), |ui| {
+                ui.add(egui::Label::new(RichText::new(beside).color(ink)).truncate());
+            });
+        },
+    );
     if let Some(a) = at_goal {
         soft(ui, m, why::at_goal(a));
     }

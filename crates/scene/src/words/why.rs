@@ -4,7 +4,7 @@ use plumbfold_core::{
     Angle, Case,
     seen::{DepthGap, LeanGap, SeenStudy},
     stops::{Limit, ShapeOrRange, Stop, Stopped},
-    takes::{AtGoal, Change, Kind, Outcome, Pair, Take},
+    takes::{AtGoal, Change, Kind, Outcome, Pair, Take, Takes},
 };
 
 use super::{clinician, names};
@@ -95,6 +95,15 @@ pub fn shape_or_range(s: &ShapeOrRange) -> String {
 pub fn takes_title(goal: Angle) -> String {
     let to = if (goal.deg() - 90.0).abs() < 0.05 { "thigh level".to_owned() } else { format::deg(goal) };
     format!("What it would take, to {to} on mid-foot")
+}
+
+/// Where nothing on offer reaches the goal: no single change and no pair.
+#[must_use]
+pub fn nothing_reaches(t: &Takes) -> Option<&'static str> {
+    let none = t.pair.is_none() && t.single.iter().all(|x| x.outcome.enough().is_none());
+    none.then_some(
+        "No single change here and no two together reach this goal: choose another depth, or another exercise.",
+    )
 }
 
 /// What a kind of change is called.
