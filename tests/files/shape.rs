@@ -72,10 +72,14 @@ const KEYS: [&str; 48] = [
     "notices",
 ];
 
+/// The keys of the object itself.
+pub fn top_keys() -> impl Iterator<Item = &'static str> {
+    KEYS.into_iter().filter(|key| !key.contains('.'))
+}
+
 /// The keys that belong to a posture.
 fn of_posture() -> impl Iterator<Item = &'static str> {
-    let top = KEYS.into_iter().filter(|key| !key.contains('.'));
-    top.skip_while(|key| *key != "shank_deg").take_while(|key| *key != "steady_depth_deg")
+    top_keys().skip_while(|key| *key != "shank_deg").take_while(|key| *key != "steady_depth_deg")
 }
 
 fn paths(shape: &Shape, path: &str, found: &mut Vec<String>) {
