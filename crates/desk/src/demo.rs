@@ -21,7 +21,7 @@ pub fn client() -> Result<Client, Problem> {
             field: Some("format".to_owned()),
             value: format.to_string(),
             allowed: "the format of this version".to_owned(),
-            hint: "build the program from one checkout".into(),
+            hint: "build the program from one checkout",
         }),
     }
 }

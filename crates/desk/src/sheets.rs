@@ -4,7 +4,7 @@ use std::{fs, path::Path};
 
 use plumbfold_core::{Angle, Step, posture};
 use plumbfold_scene::{
-    Scene, Theme,
+    Role, Scene, Theme,
     figure::{Outline, Show},
     page::{Page, sheet_page},
 };
@@ -68,21 +68,22 @@ pub fn scene(doc: &Document, results: &Results, thigh_deg: f64) -> Scene {
     })
 }
 
-/// Writes the demo sheet over nothing but an earlier one: what may be replaced is a PNG as wide as
-/// our sheets.
+/// Writes the demo sheet over nothing but an earlier one.
 ///
 /// # Errors
 /// A sentence where something else lies there or the disk refuses.
 pub fn write_own(path: &Path, png: &[u8]) -> Result<(), String> {
-    if let Ok(there) = fs::read(path)
-        && !is_sheet(&there)
-    {
-        return Err(format!("{} is not a sheet of ours: move it away to have the demo sheet.", path.display()));
+    if let Ok(there) = fs::symlink_metadata(path) {
+        // nothing is read from a pipe, nothing written through a link
+        let ours = there.is_file() && fs::read(path).is_ok_and(|bytes| is_own(&bytes));
+        if !ours {
+            return Err(format!("{} is not a sheet of ours: move it away to have the demo sheet.", path.display()));
+        }
     }
     fs::write(path, png).map_err(|e| format!("{} could not be written: {e}; go to a folder of yours.", path.display()))
 }
 
-/// A PNG as wide as our sheets.
-fn is_sheet(bytes: &[u8]) -> bool {
-    bytes.starts_with(b"\x89PNG\r\n\x1a\n") && bytes.get(16..20) == Some(WIDTH_PX.to_be_bytes().as_slice())
+fn is_own(bytes: &[u8]) -> bool {
+    let paper = Theme::light().rgba(Role::Paper);
+    plumbfold_sheet::is_page(bytes, WIDTH_PX, [paper.r, paper.g, paper.b])
 }

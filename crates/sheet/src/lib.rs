@@ -26,5 +26,5 @@
 mod png;
 mod svg;
 
-pub use png::{SheetError, WIDEST_PX, png};
+pub use png::{SheetError, WIDEST_PX, is_page, png};
 pub use svg::svg;

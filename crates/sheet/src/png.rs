@@ -72,6 +72,25 @@ pub fn png(svg: &str, width_px: u32) -> Result<Vec<u8>, SheetError> {
     encode(&rgb, width_px, height as u32).map_err(|e| SheetError::Encode(e.to_string()))
 }
 
+/// Whether bytes are a PNG such as [`png`] makes of a page of this width on paper of this colour: opaque
+/// RGB whose first rows, the page's margin, are bare paper. A photograph or a screenshot is not.
+#[must_use]
+pub fn is_page(bytes: &[u8], width_px: u32, paper: [u8; 3]) -> bool {
+    let Ok(mut reader) = png::Decoder::new(std::io::Cursor::new(bytes)).read_info() else { return false };
+    let info = reader.info();
+    let like_ours = (info.width, info.color_type, info.bit_depth)
+        == (width_px, png::ColorType::Rgb, png::BitDepth::Eight)
+        && !info.interlaced
+        && info.height > BARE_ROWS;
+    like_ours
+        && (0..BARE_ROWS).all(
+            |_| matches!(reader.next_row(), Ok(Some(row)) if row.data().chunks_exact(3).all(|pixel| pixel == paper)),
+        )
+}
+
+/// Rows of a page's upper margin that hold nothing.
+const BARE_ROWS: u32 = 12;
+
 fn encode(rgb: &[u8], width: u32, height: u32) -> Result<Vec<u8>, png::EncodingError> {
     let mut out = Vec::with_capacity(rgb.len() / 8);
     let mut encoder = png::Encoder::new(&mut out, width, height);
@@ -100,6 +119,23 @@ mod tests {
             text: text.to_owned(),
         });
         s
+    }
+
+    #[test]
+    fn a_page_of_ours_is_known_again_and_another_picture_is_not() {
+        let theme = Theme::light();
+        let c = theme.rgba(Role::Paper);
+        let paper = [c.r, c.g, c.b];
+        let page = png(&crate::svg(&words("knee", Weight::Regular, 20.0), &theme), 400).expect("a picture");
+        assert!(is_page(&page, 400, paper));
+        assert!(!is_page(&page, 401, paper) && !is_page(&page, 400, [0, 0, 0]));
+        assert!(
+            !is_page(&page[..60], 400, paper)
+                && !is_page(b"", 400, paper)
+                && !is_page(b"\x89PNG\r\n\x1a\n", 400, paper)
+        );
+        let high = png(&crate::svg(&words("knee", Weight::Regular, 90.0), &theme), 400).expect("a picture");
+        assert!(is_page(&high, 400, paper), "the margin alone counts");
     }
 
     fn decoded(bytes: &[u8]) -> (u32, u32, Vec<u8>) {
