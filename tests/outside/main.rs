@@ -3,8 +3,10 @@
 //! network is needed here.
 //!
 //! - `statics`: centre of mass and static joint torques by Pinocchio and MuJoCo.
+//! - `optima`: depths, least effort, least amounts by SciPy.
 //! - `made_by`: whether the numbers still belong to the scripts that made them.
 
 mod made_by;
+mod optima;
 mod reference;
 mod statics;

@@ -64,6 +64,20 @@ impl Report {
         }
     }
 
+    /// A number no more than another; a NaN never is.
+    pub fn no_more(&mut self, what: &str, ours: f64, most: f64) {
+        self.compared += 1;
+        if ours.is_nan() || most.is_nan() || ours > most {
+            self.over.push(format!("{what}: {ours} is more than {most}"));
+        }
+    }
+
+    /// Two answers of different kinds.
+    pub fn differ(&mut self, what: &str, how: &str) {
+        self.compared += 1;
+        self.over.push(format!("{what}: {how}"));
+    }
+
     /// How many are out of tolerance so far.
     pub fn over(&self) -> usize {
         self.over.len()

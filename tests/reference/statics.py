@@ -22,13 +22,9 @@ The clients are drawn by random_clients.py, the postures here: any shank, thigh 
 that the legs can span, in balance or not.
 """
 
-import hashlib
-import json
 import math
-import platform
 import sys
 from collections import Counter
-from pathlib import Path
 
 import mujoco
 import numpy as np
@@ -37,12 +33,12 @@ import pinocchio as pin
 import chain
 import random_clients
 import ron
+from fixture import digits, drawn, header, write
 
 SEED = 20261107
 COUNT = 400
 AGREE = 1e-9
-HERE = Path(__file__).parent
-SOURCES = ("statics.py", "chain.py", "random_clients.py", "model.py", "ron.py", "tables.json")
+SOURCES = ("statics.py",)
 SHOULDER_HALF = 0.11  # of stature; no torque about a mediolateral axis depends on it
 SIDES = {"right": 1.0, "left": -1.0}
 
@@ -399,16 +395,6 @@ def postures(dice, c):
             return angles
 
 
-def digits(value, count=13):
-    if isinstance(value, dict):
-        return {k: digits(v, count) for k, v in value.items()}
-    if isinstance(value, (list, tuple, np.ndarray)):
-        return [digits(v, count) for v in value]
-    value = float(value)
-    # what is nothing but rounding is written as nothing
-    return 0.0 if abs(value) < 1e-14 else float(f"{value:.{count}g}")
-
-
 def case(client, dice):
     visit = client["visits"][0]
     task = visit["tasks"][0]
@@ -443,37 +429,6 @@ def kinds(c, visit, degrees):
     yield from (["uneven weight"] if c.heavier > 0.5 else [])
     short = c.placement == "Overhead" and abs(chain.arms(c, lean)[0]) > 1e-9
     yield from (["overhead short of vertical"] if short else [])
-
-
-def fits(client):
-    """Whether both knee-to-wall distances fit foot and shank."""
-    visit = client["visits"][0]
-    try:
-        chain.chain_of(visit, visit["tasks"][0])
-    except ValueError:
-        return False
-    return True
-
-
-def drawn(seed, count):
-    """Random clients with no input error."""
-    return [c for c in random_clients.clients(seed, count + 20) if fits(c)][:count]
-
-
-def header(sources, seed, count, packages):
-    return {
-        "seed": seed,
-        "count": count,
-        "python": platform.python_version(),
-        **packages,
-        "sha256": {n: hashlib.sha256((HERE / n).read_bytes()).hexdigest() for n in sources},
-    }
-
-
-def write(name, head, lines):
-    text = [json.dumps(line, separators=(",", ":"), allow_nan=False) for line in lines]
-    head = json.dumps(head, separators=(",", ":"))
-    (HERE / name).write_text('{"header":' + head + ',\n"cases":[\n' + ",\n".join(text) + "\n]}\n")
 
 
 def main(count):
