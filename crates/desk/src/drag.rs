@@ -61,7 +61,8 @@ pub fn drag(state: &State, results: &Results, now: &Step, d: &Drag) -> Option<Ac
         }
         Handle::KneeHipSlider | Handle::MapDot => None,
         Handle::PainMark => {
-            let deg = depth_of_hip(results, d.to.y).round();
+            // the mark stands at a seat height, not at the hip's
+            let deg = depth_of_seat(results, d.to.y).round();
             Some(Action::Edit(Edit::Number(Entry::PainFrom, Some(deg)), d.undo))
         }
     }
@@ -131,7 +132,7 @@ fn matching(state: &State, results: &Results, d: &Drag) -> Option<Action> {
         }
         Handle::Shoulder => trunk = lean_to(&shown, d.to).deg(),
         Handle::Rail => {
-            let drop_m = d.to.y - j.knee.y;
+            let drop_m = d.to.y + tables::HIP_ABOVE_SEAT_M - j.knee.y;
             let span = (j.hip - j.knee).norm();
             thigh = (drop_m / span).clamp(-1.0, 1.0).acos().to_degrees();
         }

@@ -27,9 +27,11 @@ pub fn font_definitions() -> FontDefinitions {
     defs
 }
 
-/// Sets fonts once.
+/// Sets fonts once, and lines to stand where the scene puts them: as on the sheet, not snapped to
+/// pixels.
 pub fn install_fonts(ctx: &egui::Context) {
     ctx.set_fonts(font_definitions());
+    ctx.tessellation_options_mut(|o| o.round_line_segments_to_pixels = false);
 }
 
 /// The theme of a palette.

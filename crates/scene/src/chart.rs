@@ -251,7 +251,7 @@ pub fn chart(c: &Chart, area: Size, look: &Look) -> Scene {
             match series.stroke {
                 Stroke::Solid => s.line(piece, 2.0, series.role),
                 Stroke::Dashed => {
-                    for d in shapes::dashes(&piece, 6.0, 4.0) {
+                    for d in shapes::dashes(&piece, 10.0, 5.0) {
                         s.line(d, 2.0, series.role);
                     }
                 }

@@ -91,7 +91,12 @@ fn build(study: &Study, now: Option<Angle>, title: &str, unit: &str, series: Vec
     Chart {
         title: title.to_owned(),
         x: Axis { title: "thigh angle".to_owned(), from: 0.0, to: far, scale: Scale::Degrees },
-        y: Axis { title: unit.to_owned(), from: low * 1.08, to: high * 1.12, scale: Scale::Number },
+        y: Axis {
+            title: unit.to_owned(),
+            from: low - 0.1 * (high - low),
+            to: high + 0.12 * (high - low),
+            scale: Scale::Number,
+        },
         map: None,
         series,
         bands,

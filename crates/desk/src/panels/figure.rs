@@ -37,6 +37,8 @@ pub struct Desk<'a> {
 const WHEEL: f64 = 0.12;
 /// Shown until something on the figure was dragged.
 const FIRST_USE: &str = "Drag the hip to squat, the knee to shift work, the shoulder to straighten the trunk.";
+/// Shown from then on.
+const LATER: &str = "Wheel and arrow keys move it too; F1 lists the keys.";
 /// Shown while matching.
 const MATCHING: &str = "Matching: drag hip, knee and shoulder onto the squat you saw. Nothing else changes.";
 
@@ -76,7 +78,8 @@ fn scene(d: &Desk<'_>, size: Size, look: &Look) -> (Scene, View) {
     let note = if v.matching {
         Some(MATCHING)
     } else if v.dragged {
-        None
+        // one line in every state, so that the figure keeps its place
+        Some(LATER)
     } else {
         Some(FIRST_USE)
     };
@@ -206,8 +209,10 @@ fn dragged(ui: &Ui, d: &Desk<'_>, area: Rect, grip: &Grip, view: &View, response
     let pointer = response.interact_pointer_pos()?;
     let middle = to_rect(area.min, grip.hit.bounds()).center();
     let on_track = grip.track.is_some();
-    let fresh =
-        Held { value: grip.value, y: pointer.y, offset: if on_track { egui::Vec2::ZERO } else { pointer - middle } };
+    // a drag is known as one only after some points of movement: it began at the press
+    let pressed = ui.input(|i| i.pointer.press_origin()).unwrap_or(pointer);
+    let offset = if on_track { egui::Vec2::ZERO } else { pressed - middle };
+    let fresh = Held { value: grip.value, y: pressed.y, offset };
     let held = if response.drag_started() {
         ui.data_mut(|data| data.insert_temp(response.id, fresh));
         fresh

@@ -166,7 +166,7 @@ fn ranges(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
     let used = |angle: Option<Angle>, from: Option<limits::Origin>| match (angle, from) {
         (Some(a), Some(limits::Origin::Measured)) => format::deg(a),
         (Some(a), Some(limits::Origin::Assumed)) => format!("≈ {}", format::deg(a)),
-        (Some(a), Some(limits::Origin::Precaution)) => format!("cap {}", format::deg(a)),
+        (Some(a), Some(limits::Origin::Precaution)) => format!("≤ {}", format::deg(a)),
         _ => String::new(),
     };
     let ankle_way = match v.joints.ankle {
@@ -389,7 +389,7 @@ fn posture_rule(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
         });
     });
     let (entry, name, empty) = match t.rule {
-        Rule::Usual { .. } => (Entry::Slope, "…shank per thigh", "usual"),
+        Rule::Usual { .. } => (Entry::Slope, "…per thigh °", "usual"),
         Rule::ArmRatio(_) => (Entry::Ratio, "…hip to knee", ""),
         Rule::HeldShank(_) => (Entry::HeldShank, "…shank", ""),
         Rule::LeastEffort => return,

@@ -174,7 +174,7 @@ fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
     let curve_at = |s: &chart::Series, x: f64| {
         s.points.iter().min_by(|a, b| (a.0 - x).abs().total_cmp(&(b.0 - x).abs())).map(|p| p.1)
     };
-    let mut taken: Vec<(f64, f64)> = Vec::new();
+    let mut taken: Vec<(f64, f64, f64)> = Vec::new();
     for s in &c.series {
         let mut best: Option<(f64, (f64, f64))> = None;
         for share in [0.18, 0.28, 0.38, 0.48, 0.58, 0.68] {
@@ -186,26 +186,26 @@ fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
                     continue;
                 }
                 // the name covers some width: look along it
-                let along = [-0.11, -0.05, 0.0, 0.05, 0.11].map(|d| x + d * width);
+                let half = 0.035 * width * s.name.chars().count() as f64 * 0.5 + 0.02 * width;
+                let along = [-1.0, -0.5, 0.0, 0.5, 1.0].map(|d| x + d * half);
                 let to_curves = c
                     .series
                     .iter()
                     .flat_map(|o| along.iter().filter_map(move |&x| curve_at(o, x)))
                     .map(|v| (v - y).abs() / height)
                     .fold(f64::INFINITY, f64::min);
-                let to_names = taken
-                    .iter()
-                    .filter(|t| (t.0 - x).abs() < 0.45 * width)
-                    .map(|t| (t.1 - y).abs() / height)
-                    .fold(f64::INFINITY, f64::min);
-                let free = to_curves.min(to_names).min(0.12) - 0.1 * offset.abs();
+                let meets = |t: &&(f64, f64, f64)| (t.0 - x).abs() < half + t.2;
+                let to_names =
+                    taken.iter().filter(meets).map(|t| (t.1 - y).abs() / height).fold(f64::INFINITY, f64::min);
+                let off = if to_names < 0.14 { 1.0 } else { 0.0 };
+                let free = to_curves.min(0.12) - 0.1 * offset.abs() - off;
                 if best.is_none_or(|b| free > b.0 + 1e-9) {
                     best = Some((free, (x, y)));
                 }
             }
         }
         let Some((_, (x, y))) = best else { continue };
-        taken.push((x, y));
+        taken.push((x, y, 0.035 * width * s.name.chars().count() as f64 * 0.5 + 0.02 * width));
         let text = RichText::new(&s.name).font(font(11.5, Weight::SemiBold)).color(color(theme, s.role));
         plot.text(Text::new("", PlotPoint::new(x, y), text));
     }

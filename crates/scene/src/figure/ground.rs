@@ -87,7 +87,7 @@ pub(super) fn rule(scene: &mut Scene, view: &View, p: &Posture, r: &Readings, le
     for ((end, joint_y, role), (y0, y1)) in
         [(hip, view.y(p.joints.hip.y), Role::Hip), (knee, view.y(p.joints.knee.y), Role::Knee)].into_iter().zip(rows)
     {
-        for d in shapes::dashes(&[Pt::new(end, joint_y), Pt::new(end, y0)], 2.5, 3.0) {
+        for d in shapes::dashes(&[Pt::new(end, joint_y), Pt::new(end, y0)], 6.0, 4.0) {
             scene.line(d, 1.2, role);
         }
         let bar = RectPt::new(Pt::new(com, y0), Pt::new(end, y1));
