@@ -2,7 +2,7 @@
 
 use crate::{
     angle::Angle,
-    balance::{ANGLE_TOL, Toward},
+    balance::{ANGLE_TOL, Balance, Toward, balance_in},
     case::Case,
     row::{LEAN_MIN, Refusal, Row},
 };
@@ -87,22 +87,23 @@ pub fn map(c: &Case, thigh: (Angle, Angle), shank: (Angle, Angle)) -> Map {
 
 fn column_cells<'a>(row: &'a Row<'_>, shanks: &'a [Angle]) -> impl Iterator<Item = Cell> + 'a {
     let allowed = row.shanks().0;
-    let (low, high) = row.ankle_range();
+    let (_, high) = row.ankle_range();
+    let stand = &row.case.stand;
+    let plane = stand.sin_out == 0.0 && stand.half_stance_m == row.case.body.hip_half_m;
     let folds = row.lean_high.rad() >= LEAN_MIN.rad() - ANGLE_TOL;
     shanks.iter().map(move |&shank| {
         let within = |a: Angle, b: Angle| shank.rad() >= a.rad() - ANGLE_TOL && shank.rad() <= b.rad() + ANGLE_TOL;
-        let ground = if shank.rad() > high.rad() + ANGLE_TOL {
-            Err(Refusal::Ankle)
-        } else if shank.rad() < low.rad() - ANGLE_TOL {
-            Err(Refusal::Knee)
-        } else {
-            match allowed {
-                Ok(s) if within(s.low, s.high) => Ok(()),
-                Ok(_) => Err(Refusal::Knee),
-                Err(why) => Err(why),
-            }
+        // what the row allows needs no posture, nor do legs in the sagittal plane; the rest is named in the
+        // order of a single balance
+        let ground = match allowed {
+            Ok(s) if within(s.low, s.high) && folds => Ok(()),
+            _ if plane && shank.rad() > high.rad() + ANGLE_TOL => Err(Refusal::Ankle),
+            Ok(s) if plane && !within(s.low, s.high) => Err(Refusal::Knee),
+            _ => match balance_in(row, shank) {
+                Balance::Stands { .. } => Ok(()),
+                Balance::Refused(why) => Err(why),
+            },
         };
-        let ground = if ground.is_ok() && !folds { Err(Refusal::Hip) } else { ground };
         match ground {
             Ok(()) => Cell { ground: stands(row, shank), lean_rad: row.lean(shank).rad() },
             Err(why) => Cell { ground: Ground::Refused(why), lean_rad: f64::NAN },

@@ -414,7 +414,10 @@ fn beyond_gap(c: &Case, kind: Kind, from: f64, most: f64) -> Option<f64> {
                 let mid = 0.5 * (low + high);
                 if good(mid) { high = mid } else { low = mid }
             }
-            return Some(high);
+            // where a gap closes the depth jumps: a hair more, so that rounding on the way through a
+            // file does not open it again
+            let safe = (high + 1e-9 * most).min(most);
+            return Some(if good(safe) { safe } else { high });
         }
         last = here;
     }
@@ -433,12 +436,12 @@ fn deepest_amount(c: &Case, kind: Kind, most: f64) -> f64 {
     if most <= 0.0 {
         return 0.0;
     }
-    if kind.group() != Group::Today {
-        // easing a limit never loses depth
+    if kind.group() != Group::Today && kind != Kind::Ankle {
+        // easing one of these never loses depth; more ankle can, where the knee limit leaves two pieces
         return most;
     }
     let n = SAMPLES / 2;
-    let at = |k: usize| most * k as f64 / n as f64;
+    let at = |k: usize| if k == n { most } else { most * k as f64 / n as f64 };
     let values: Vec<f64> = (0..=n).map(|k| f(at(k))).collect();
     let best = (0..=n).min_by(|a, b| values[*a].total_cmp(&values[*b])).unwrap_or(0);
     // at an end of the range, a look just inside tells whether the peak lies there
@@ -545,22 +548,32 @@ fn least_pair(c: &Case, outer: (Kind, f64), inner: (Kind, f64)) -> Option<([Chan
         }
         Some(least)
     };
+    let pair = |a: f64, b: f64| [Change { kind: outer.0, amount: a }, Change { kind: inner.0, amount: b }];
+    // the depth itself decides: a gap further up rules a pair out
+    let proved = |a: f64, b: f64| c.changed(&pair(a, b)[0]).is_ok_and(|case| reaches(&case, &pair(a, b)[1]));
+    let found = least_sum(outer.1, inner.1, inner_least)?;
+    let (a, b, share) = if proved(found.0, found.1) {
+        found
+    } else {
+        least_sum(outer.1, inner.1, |a| inner_least(a).filter(|&b| proved(a, b)))?
+    };
+    Some((pair(a, b), share))
+}
+
+/// Of the outer amounts the one with the least summed share, with its inner amount: sampled, then refined.
+fn least_sum(outer: f64, inner: f64, least: impl Fn(f64) -> Option<f64>) -> Option<(f64, f64, f64)> {
     // infeasible pairs count as more than any sum, falling with the outer amount
-    let sum = |a: f64| inner_least(a).map_or(3.0 - a / outer.1, |b| a / outer.1 + b / inner.1);
+    let sum = |a: f64| least(a).map_or(3.0 - a / outer, |b| a / outer + b / inner);
     let n = SAMPLES / 2;
-    let at = |k: usize| outer.1 * k as f64 / n as f64;
+    let at = |k: usize| outer * k as f64 / n as f64;
     let values: Vec<f64> = (0..=n).map(|k| sum(at(k))).collect();
     let k = (0..=n).min_by(|a, b| values[*a].total_cmp(&values[*b]))?;
     if values[k] > 2.0 {
         return None;
     }
-    let (x, value) = roots::least(sum, at(k.saturating_sub(1)), at((k + 1).min(n)), 1e-5 * outer.1);
+    let (x, value) = roots::least(sum, at(k.saturating_sub(1)), at((k + 1).min(n)), 1e-5 * outer);
     let (a, share) = if value < values[k] { (x, value) } else { (at(k), values[k]) };
-    let b = inner_least(a)?;
-    let changes = [Change { kind: outer.0, amount: a }, Change { kind: inner.0, amount: b }];
-    let case = c.changed(&changes[0]).ok()?;
-    // the depth itself decides: a gap further up rules the pair out
-    reaches(&case, &changes[1]).then_some((changes, share))
+    Some((a, least(a)?, share))
 }
 
 /// The least amount that gives room at the goal; one bracket where room grows over the range.
