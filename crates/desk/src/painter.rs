@@ -50,8 +50,7 @@ pub fn paint(painter: &egui::Painter, origin: Pos2, scene: &Scene, theme: Theme)
                 painter.add(Shape::convex_polygon(points, color(theme, *role), Stroke::NONE));
             }
             Item::Line { pts, width, role } => {
-                let points = pts.iter().map(|&p| to_pos(origin, p)).collect();
-                painter.add(PathShape::line(points, Stroke::new(*width, color(theme, *role))));
+                painter.add(line(origin, pts, *width, color(theme, *role), painter.pixels_per_point()));
             }
             Item::Cells(cells) => {
                 // edges on whole pixels, so that neighbours leave no seam
@@ -67,6 +66,37 @@ pub fn paint(painter: &egui::Painter, origin: Pos2, scene: &Scene, theme: Theme)
             Item::Text(label) => text(painter, origin, label, theme),
         }
     }
+}
+
+/// A line with butt ends. A stroke's soft edge lengthens it at both ends, which makes short dashes too
+/// long: a straight piece is filled as the rectangle it is, unless it is too thin for that.
+fn line(origin: Pos2, pts: &[Pt], width: f32, ink: Color32, pixels_per_point: f32) -> Shape {
+    let points: Vec<Pos2> = pts.iter().map(|&p| to_pos(origin, p)).collect();
+    if let [a, b] = points[..]
+        && width * pixels_per_point >= 1.0
+        && a != b
+    {
+        let across = (b - a).normalized().rot90() * (width / 2.0);
+        let corners = vec![a + across, b + across, b - across, a - across];
+        return Shape::convex_polygon(corners, ink, Stroke::NONE);
+    }
+    PathShape::line(trimmed(points, 0.5 / pixels_per_point), Stroke::new(width, ink)).into()
+}
+
+/// A line without the last bit at both ends, which its soft edge adds again.
+fn trimmed(mut points: Vec<Pos2>, by: f32) -> Vec<Pos2> {
+    let shorter = |end: Pos2, next: Pos2| {
+        let step = next - end;
+        if step.length() > 2.0 * by { end + step.normalized() * by } else { end }
+    };
+    if let [first, second, ..] = points[..] {
+        points[0] = shorter(first, second);
+    }
+    if let [.., second, last] = points[..] {
+        let at = points.len() - 1;
+        points[at] = shorter(last, second);
+    }
+    points
 }
 
 fn text(painter: &egui::Painter, origin: Pos2, label: &Label, theme: Theme) {

@@ -153,10 +153,14 @@ fn demands(ui: &mut Ui, m: &Meaning<'_>) {
             left(ui, 74.0, |ui| ui.label(name));
             bar(ui, (nm / peak).clamp(0.0, 1.0) as f32, role, stretched, m.theme);
             ui.label(RichText::new(format::number(nm, 0)).font(font(13.0, Weight::SemiBold)));
-            let word = RichText::new(clinician::effort(effort)).small().color(color(m.theme, Role::InkSoft));
-            // the longest word gives way to the panel; whole on hovering
-            ui.add(egui::Label::new(word).truncate());
+            if effort <= 1.0 {
+                ui.label(RichText::new(clinician::effort(effort)).small().color(color(m.theme, Role::InkSoft)));
+            }
         });
+        if effort > 1.0 {
+            // too long to stand in the row
+            soft(ui, m, format!("{name} {}", clinician::effort(effort)));
+        }
     }
     if let Some(text) = clinician::work_shared(&r.moments_nm) {
         ui.label(plumbfold_scene::words::capital(&text));
@@ -168,7 +172,7 @@ fn demands(ui: &mut Ui, m: &Meaning<'_>) {
 }
 
 fn bar(ui: &mut Ui, share: f32, role: Role, stretched: bool, theme: Theme) {
-    let (rect, _) = ui.allocate_exact_size(vec2(64.0, 12.0), Sense::hover());
+    let (rect, _) = ui.allocate_exact_size(vec2(80.0, 12.0), Sense::hover());
     let p = ui.painter();
     p.rect_filled(rect, 3.0, color(theme, Role::FieldBg));
     let filled = egui::Rect::from_min_size(rect.min, vec2(rect.width() * share, rect.height()));

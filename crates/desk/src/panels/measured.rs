@@ -510,7 +510,11 @@ fn precautions(ui: &mut Ui, m: &Measured<'_>, out: &mut Vec<Action>) {
         let label = name(ui, "Set by");
         let mut text = v.caps.source.clone();
         let edit = ui.add(
-            egui::TextEdit::singleline(&mut text).desired_width(WIDE).char_limit(plumbfold_records::SOURCE_MAX_CHARS),
+            egui::TextEdit::multiline(&mut text)
+                .desired_rows(2)
+                .desired_width(WIDE)
+                .return_key(None)
+                .char_limit(plumbfold_records::SOURCE_MAX_CHARS),
         );
         let edit = edit.labelled_by(label.id);
         ui.ctx().accesskit_node_builder(edit.id, |node| node.set_label("Precautions set by"));

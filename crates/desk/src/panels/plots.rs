@@ -3,7 +3,7 @@
 use egui::{Color32, RichText, Stroke, Ui, vec2};
 use egui_plot::{Line, LineStyle, Plot, PlotPoint, PlotPoints, Polygon, Text, VLine};
 use plumbfold_core::{Step, Study};
-use plumbfold_scene::{Axis, BandKind, Chart, Role, Theme, Weight, chart, plots};
+use plumbfold_scene::{Axis, BandKind, Chart, Role, Theme, Weight, chart, plots, text_width};
 
 use crate::{
     action::{Action, ViewChange},
@@ -13,6 +13,10 @@ use crate::{
     state::State,
 };
 
+/// Font size of the curves' names.
+const NAME: f32 = 11.5;
+/// Width of the labels at the left of a plot, at most.
+const AXIS: f64 = 36.0;
 /// Height of the plots.
 pub const HEIGHT: f32 = 188.0;
 
@@ -119,7 +123,7 @@ fn one(ui: &mut Ui, c: &Chart, size: egui::Vec2, theme: Theme, out: &mut Vec<Act
                 };
                 plot.line(Line::new(s.name.clone(), points).color(color(theme, s.role)).width(2.0).style(style));
             }
-            names(plot, c, theme);
+            names(plot, c, f64::from(size.x) - AXIS, theme);
             if let Some(x) = c.cursor {
                 plot.vline(VLine::new("depth", x).color(color(theme, Role::Ink)).width(1.5));
             }
@@ -169,16 +173,20 @@ fn bands(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
 }
 
 /// Each curve's name above or below it, where it is farthest from every other curve and name.
-fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
+fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, inner: f64, theme: Theme) {
     let (width, height) = (c.x.to - c.x.from, c.y.to - c.y.from);
     let curve_at = |s: &chart::Series, x: f64| {
         s.points.iter().min_by(|a, b| (a.0 - x).abs().total_cmp(&(b.0 - x).abs())).map(|p| p.1)
     };
     let mut taken: Vec<(f64, f64, f64)> = Vec::new();
     for s in &c.series {
+        let half = (f64::from(text_width(&s.name, NAME, Weight::SemiBold)) / 2.0 + 4.0) / inner * width;
         let mut best: Option<(f64, (f64, f64))> = None;
         for share in [0.18, 0.28, 0.38, 0.48, 0.58, 0.68] {
             let x = c.x.from + share * width;
+            if x - half < c.x.from || x + half > c.x.to {
+                continue;
+            }
             let Some(at) = curve_at(s, x) else { continue };
             for offset in [0.10, -0.10, 0.16, -0.16] {
                 let y = at + offset * height;
@@ -186,7 +194,6 @@ fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
                     continue;
                 }
                 // the name covers some width: look along it
-                let half = 0.035 * width * s.name.chars().count() as f64 * 0.5 + 0.02 * width;
                 let along = [-1.0, -0.5, 0.0, 0.5, 1.0].map(|d| x + d * half);
                 let to_curves = c
                     .series
@@ -205,8 +212,8 @@ fn names(plot: &mut egui_plot::PlotUi<'_>, c: &Chart, theme: Theme) {
             }
         }
         let Some((_, (x, y))) = best else { continue };
-        taken.push((x, y, 0.035 * width * s.name.chars().count() as f64 * 0.5 + 0.02 * width));
-        let text = RichText::new(&s.name).font(font(11.5, Weight::SemiBold)).color(color(theme, s.role));
+        taken.push((x, y, half));
+        let text = RichText::new(&s.name).font(font(NAME, Weight::SemiBold)).color(color(theme, s.role));
         plot.text(Text::new("", PlotPoint::new(x, y), text));
     }
 }
