@@ -1,6 +1,12 @@
 //! Depths against a dense scan, and what easing does to them.
 
-use plumbfold_core::{Angle, Case, Limits, depths, sample};
+use plumbfold_core::{
+    Angle, Bend, Case, Limits, Placement, Sides,
+    depth::room,
+    depths,
+    measures::{AnkleRange, KneeRange},
+    sample,
+};
 use proptest::prelude::*;
 
 use crate::{
@@ -130,5 +136,53 @@ fn a_depth_is_an_end() {
             brute::Row::new(&i, end + f64::to_radians(by_deg)).feasible(&i, s[1], s[3], f64::to_radians(0.005))
         };
         assert!(ok(-0.05) && !ok(0.05));
+    }
+}
+
+/// A man with stiff ankles and a heavy goblet loses the zone at a thigh angle of about 100° and has it
+/// again deeper. With a little more ankle that gap closes: a hair before it does, the depth ends at
+/// the gap, however narrow; a hair after, it goes on below. Fails if a scan steps over the gap.
+#[test]
+fn a_narrow_gap_ends_the_depth() {
+    let (mut m, mut t) = sample::average_man();
+    m.lengths.shank_m = Some(0.45);
+    m.lengths.trunk_m = Some(0.463);
+    m.lengths.foot_m = Some(0.305);
+    m.knee = KneeRange::Degrees(Sides { left: Some(deg(136.0)), right: None });
+    t.placement = Placement::Goblet;
+    t.load_kg = 95.0;
+    t.footwear_drop_m = 0.018;
+    t.bend = Bend::Degrees(deg(80.0));
+    t.lean_limit = Some(deg(71.0));
+    let with = |ankle: f64| {
+        let mut m = m.clone();
+        m.ankle = AnkleRange::Degrees(Sides { left: Some(deg(ankle)), right: None });
+        case(&m, &t)
+    };
+    let bottom = |c: &Case| {
+        let s = c.stand().support;
+        (8_500..11_500)
+            .map(|k| 0.01 * f64::from(k))
+            .map(|x| (room(c, deg(x), s.zone_back_m, s.zone_front_m), x))
+            .fold((f64::INFINITY, 0.0), |a, b| if b.0 < a.0 { b } else { a })
+    };
+    let (mut gap, mut none) = (10.0, 25.0);
+    assert!(bottom(&with(gap)).0 < 0.0 && bottom(&with(none)).0 > 0.0);
+    while none - gap > 1e-6 {
+        let mid = 0.5 * (gap + none);
+        if bottom(&with(mid)).0 < 0.0 { gap = mid } else { none = mid }
+    }
+    let at = bottom(&with(gap)).1;
+    for by in [0.3, 0.003, 0.0003] {
+        let (closed, open) = (with(gap - by), with(none + by));
+        let scan = |c: &Case| {
+            let i = Inputs::from(c);
+            let s = explicit::support(&i);
+            brute::Row::new(&i, at.to_radians()).feasible(&i, s[1], s[3], f64::to_radians(0.01))
+        };
+        assert!(!scan(&closed) && scan(&open));
+        let depth = |c: &Case| depths(c).steady.map_or(f64::NAN, Angle::deg);
+        assert!(depth(&closed) < at && depth(&closed) > at - 8.0, "gap at {at}°: {}°", depth(&closed));
+        assert!(depth(&open) > at + 3.0, "no gap at {at}°: {}°", depth(&open));
     }
 }

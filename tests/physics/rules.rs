@@ -1,6 +1,6 @@
 //! Which posture at a depth: each rule against a scan over all allowed shanks.
 
-use plumbfold_core::{Angle, Balance, Case, Rule, Task, depths, posture, readings};
+use plumbfold_core::{Angle, Balance, Case, Rule, Sides, Support, Task, depths, posture, readings};
 use proptest::prelude::*;
 
 use crate::{
@@ -184,4 +184,49 @@ fn a_seen_squat_sets_the_slope() {
     near("none above 0.8", case(&m, &t).usual_slope(), 0.8, 1e-12);
     // capped by the ankle
     near("ankle", shank(&t, 60.0), case(&m, &t).limits().ankle.deg(), 1e-9);
+}
+
+/// Short thighs on wide hips, feet close together and far turned out: as the shank leans, the centre of
+/// mass first goes back and then forward, so that two intervals of shanks reach a zone in front. Usual
+/// keeps to the nearer one, a wish for a ratio searches both.
+#[test]
+fn usual_where_two_intervals_of_shanks_reach_the_zone() {
+    let (mut m, mut t) = plumbfold_core::sample::average_man();
+    (m.stature_m, m.lengths.shank_m, m.lengths.thigh_m) = (2.30, Some(0.65), Some(0.20));
+    m.ankle = plumbfold_core::measures::AnkleRange::Degrees(Sides { left: Some(deg(60.0)), right: None });
+    (t.stance_m, t.toe_out, t.lean_limit) = (Some(0.05), deg(60.0), Some(deg(28.0)));
+    (t.placement, t.load_kg) = (plumbfold_core::Placement::HighBar, 300.0);
+    let thigh = f64::to_radians(90.0);
+    // a zone whose rear the furthest lean reaches only from shanks on both sides of the turn
+    let i = Inputs::from(&case(&m, &t));
+    let row = Row::new(&i, thigh);
+    let far: Vec<f64> = scan(&i, &row, 0.02).iter().filter_map(|a| row.reach(&i, a.shank)).map(|r| r.1).collect();
+    let turn = far.iter().copied().fold(f64::INFINITY, f64::min);
+    let behind = far.last().copied().unwrap_or(f64::NAN);
+    let zone_back =
+        (0.5 * (turn + behind) - explicit::foot_x(&i, 0.0)) / (explicit::foot_x(&i, 1.0) - explicit::foot_x(&i, 0.0));
+    assert!((0.05..0.9).contains(&zone_back) && behind > turn + 0.01);
+    t.support = Support { edge_back: None, zone_back, aim: zone_back + 0.05, zone_front: 0.95, edge_front: None };
+    let two = |all: &[Seen]| {
+        let inside: Vec<f64> = all.iter().filter(|a| a.outside_m == 0.0).map(|a| a.shank).collect();
+        let split = inside.windows(2).position(|w| w[0] - w[1] > f64::to_radians(0.1)).expect("two intervals");
+        (inside[split], inside[split + 1], inside)
+    };
+    for slope in [0.0, 0.05, 0.1, 0.2, 0.3] {
+        let c = case(&m, &with_rule(&t, Rule::Usual { slope: Some(slope) }));
+        let (p, i, _, all) = both(&c, thigh, 0.02).expect("some shank is allowed");
+        let s = explicit::support(&i);
+        assert!(brute::outside(p.com.x, s[1], s[3]) < 1e-8);
+        let wish = f64::to_radians(6.0 + slope * 90.0);
+        let nearest = two(&all).2.iter().map(|a| (a - wish).abs()).fold(f64::INFINITY, f64::min);
+        assert!((p.shank.rad() - wish).abs() <= nearest + 1e-7, "slope {slope}: {}°", p.shank.deg());
+    }
+    for ratio in [0.1, 0.5, 1.0, 2.0, 4.0, 10.0] {
+        let c = case(&m, &with_rule(&t, Rule::ArmRatio(ratio)));
+        let (p, i, row, all) = both(&c, thigh, 0.02).expect("some shank is allowed");
+        let (_, _, inside) = two(&all);
+        let off = |shank: f64| hip_share(&i, &row, shank).map_or(f64::INFINITY, |s| (s - ratio / (1.0 + ratio)).abs());
+        let grid = inside.iter().map(|&a| off(a)).fold(f64::INFINITY, f64::min);
+        assert!(off(p.shank.rad()) <= grid + 1e-7, "ratio {ratio}: {}°", p.shank.deg());
+    }
 }
