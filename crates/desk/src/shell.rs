@@ -32,7 +32,7 @@ pub fn open(launch: Launch, out: &mut dyn Write) -> Result<(), NoWindow> {
             .with_title(TITLE)
             .with_app_id("plumbfold")
             .with_inner_size([1440.0, 900.0])
-            .with_min_inner_size([1024.0, 700.0]),
+            .with_min_inner_size([1280.0, 720.0]),
         ..NativeOptions::default()
     };
     let timed = launch.frame_times.then(Timed::new);

@@ -115,7 +115,9 @@ pub(super) fn draw(scene: &mut Scene, view: &View, case: &Case, p: &Posture, t: 
         let text = format!("bend beyond the hip {}", format::deg(p.bend));
         lines.push(Wanted { text, size: t * 0.9, weight: Weight::Regular, role: Role::Back });
         if used.bend {
-            let text = "all of what we allow".to_owned();
+            // a seen squat may show more than was chosen
+            let beyond = p.bend.deg() > case.limits().bend.deg() + 0.5;
+            let text = if beyond { "beyond what we allow" } else { "all of what we allow" }.to_owned();
             lines.push(Wanted { text, size: t * 0.9, weight: Weight::Regular, role: Role::Back });
         }
     }
