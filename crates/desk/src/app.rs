@@ -47,7 +47,7 @@ impl App {
         let mut actions: Vec<Action> = self.answers.try_iter().map(Action::Arrived).collect();
         actions.extend(asked_by_keys(&ctx, &self.state));
         actions.extend(asked_by_window(&ctx, self.closing));
-        self.recompute();
+        self.recompute(ctx.input(|i| i.pointer.any_down()));
         if self.state.view.playing {
             let seconds = ctx.input(|i| f64::from(i.stable_dt)).min(0.1);
             actions.push(Action::View(ViewChange::PlayOn(seconds)));
@@ -74,10 +74,18 @@ impl App {
         }
     }
 
-    fn recompute(&mut self) {
-        if !self.computed.as_ref().is_some_and(|c| c.holds_for(&self.state.doc)) {
-            self.computed = Computed::new(&self.state.doc);
+    /// Computes anew where the document changed: during a drag only what moves, the rest at its end.
+    fn recompute(&mut self, dragging: bool) {
+        let now = self.computed.as_ref();
+        let holds = now.is_some_and(|c| c.holds_for(&self.state.doc));
+        if holds && (dragging || !now.is_some_and(Computed::waits)) {
+            return;
         }
+        let old = now.and_then(Computed::results).filter(|_| dragging);
+        self.computed = match old {
+            Some(old) => Computed::during_drag(&self.state.doc, old),
+            None => Computed::new(&self.state.doc),
+        };
     }
 
     fn lay_out(&self, ui: &mut Ui, out: &mut Vec<Action>) {

@@ -30,6 +30,8 @@ pub struct Results {
     pub reasons: Reasons,
     /// Where it balances.
     pub map: Map,
+    /// Whether reasons and map are those from before a drag that still goes on.
+    pub renewing: bool,
     /// What must be told.
     pub notices: Vec<Notice>,
     /// Deepest thigh angle with any posture, degrees.
@@ -43,6 +45,20 @@ impl Computed {
         let (measures, task) = (doc.visit().measures(), doc.visit().task(doc.task)?);
         let outcome = Case::new(&measures, &task).map(|(case, notices)| results(&case, notices));
         Some(Self { measures, task, outcome })
+    }
+
+    /// Computes for a document during a drag: what moves at once, the rest after it.
+    #[must_use]
+    pub fn during_drag(doc: &Document, old: &Results) -> Option<Self> {
+        let (measures, task) = (doc.visit().measures(), doc.visit().task(doc.task)?);
+        let outcome = Case::new(&measures, &task).map(|(case, notices)| renewed(&case, notices, old));
+        Some(Self { measures, task, outcome })
+    }
+
+    /// Whether part of it waits for the end of a drag.
+    #[must_use]
+    pub fn waits(&self) -> bool {
+        self.results().is_some_and(|r| r.renewing)
     }
 
     /// Whether this still holds for a document.
@@ -63,7 +79,14 @@ fn results(case: &Case, notices: Vec<Notice>) -> Results {
     let average = plumbfold_core::study(&case.with_average_lengths());
     let usual = plumbfold_core::study(&with_usual_ranges(case));
     let map = map_of(&study);
-    Results { average, usual, reasons: reasons(case), map, notices, deepest_deg: deepest(case), study }
+    let reasons = reasons(case);
+    Results { average, usual, reasons, map, renewing: false, notices, deepest_deg: deepest(case), study }
+}
+
+/// What is seen move while something is dragged; what takes longer stays as it was, and is marked.
+fn renewed(case: &Case, notices: Vec<Notice>, old: &Results) -> Results {
+    let study = study(case);
+    Results { notices, deepest_deg: deepest(case), study, renewing: true, ..old.clone() }
 }
 
 /// Deepest thigh angle, from standing, at which there is a posture at all (degrees, to 0.01°).

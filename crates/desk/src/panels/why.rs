@@ -18,6 +18,9 @@ use crate::{
 
 /// Shows the reasons.
 pub fn show(ui: &mut Ui, m: &Meaning<'_>, out: &mut Vec<Action>) {
+    if m.results.renewing {
+        soft(ui, m, "As before this drag; renewed when you let go.");
+    }
     seen(ui, m);
     used_up(ui, m);
     takes(ui, m, out);
