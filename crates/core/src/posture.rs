@@ -47,9 +47,26 @@ fn chosen(row: &Row<'_>, shanks: Shanks) -> Angle {
         Rule::ArmRatio(ratio) => {
             let share = ratio / (1.0 + ratio);
             let set = zone();
-            least_over(set.parts(), |a| off_share(row, a, share)).unwrap_or(set.nearest)
+            // the share has a corner where the centre of mass reaches the aim
+            let on_aim = row.reaching(shanks, s.aim_m, s.aim_m);
+            let corners = on_aim.parts().iter().flat_map(|p| [p.low, p.high]);
+            let pieces = cut(set.parts(), corners);
+            least_over(&pieces, |a| off_share(row, a, share)).unwrap_or(set.nearest)
         }
     }
+}
+
+/// Intervals cut at the places given.
+fn cut(parts: &[Shanks], at: impl Iterator<Item = Angle>) -> Vec<Shanks> {
+    let mut pieces = parts.to_vec();
+    for a in at {
+        if let Some(k) = pieces.iter().position(|p| p.low < a && a < p.high) {
+            let high = pieces[k].high;
+            pieces[k].high = a;
+            pieces.push(Shanks { low: a, high });
+        }
+    }
+    pieces
 }
 
 /// The shank angle of least cost over up to two intervals.

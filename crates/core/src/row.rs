@@ -380,10 +380,14 @@ fn upper_piece(over: impl Fn(f64) -> f64, low: f64, high: f64) -> Result<(f64, f
     let mut least = f64::INFINITY;
     let mut top: Option<f64> = None;
     let mut above = f64::NAN;
+    let mut most = (n, f64::NEG_INFINITY);
     for k in (0..=n).rev() {
         let s = at(k);
         let f = over(s);
         least = least.min(f);
+        if f > most.1 {
+            most = (k, f);
+        }
         match top {
             None if f <= 0.0 => top = Some(if k == n { high } else { roots::bracketed(&over, s, at(k + 1), 1e-12) }),
             Some(upper) if f > 0.0 => return Ok((roots::bracketed(&over, s, above, 1e-12), upper)),
@@ -392,7 +396,15 @@ fn upper_piece(over: impl Fn(f64) -> f64, low: f64, high: f64) -> Result<(f64, f
         above = s;
     }
     match top {
-        Some(upper) => Ok((low, upper)),
+        Some(upper) => {
+            // a hump between samples, around the largest of them
+            let (from, to) = (at(most.0.saturating_sub(1)), at((most.0 + 1).min(n)));
+            let (s, minus) = roots::least(|x| -over(x), from, to, 1e-9);
+            if minus < 0.0 && s < upper {
+                return Ok((roots::bracketed(&over, s, to.min(upper), 1e-12), upper));
+            }
+            Ok((low, upper))
+        }
         None => {
             // a dip between samples
             let (s, f) = roots::least(&over, low, high, 1e-9);
