@@ -252,16 +252,16 @@ fn names(s: &mut Scene, placer: &mut Placer, m: &Map, view: &MapView, t: f32) {
         "beyond hip and back",
         "stance too wide",
     ];
-    let kind = |c: usize, r: usize| m.cell(c, r).map_or("", |x| region(x.ground).0);
     let cell = Size::new(view.plot.w() / m.columns as f32, view.plot.h() / m.rows as f32);
-    let tall = ((t * 1.3 / cell.h).ceil() as usize).max(1);
-    for name in kinds {
+    let half = ((t * 1.3 / cell.h).ceil() as usize).max(1) / 2;
+    let runs = Runs::of(m, &kinds);
+    for (which, name) in kinds.into_iter().enumerate() {
         let width = fonts::text_width(name, t, Weight::SemiBold) + t;
         let mut spots: Vec<(usize, Pt)> = Vec::new();
-        for row in (tall / 2)..m.rows.saturating_sub(tall / 2) {
+        for row in half..m.rows.saturating_sub(half) {
             let mut start = None;
             for column in 0..=m.columns {
-                let inside = column < m.columns && (row - tall / 2..=row + tall / 2).all(|r| kind(column, r) == name);
+                let inside = column < m.columns && runs.covers(column, row, half, which);
                 match (inside, start) {
                     (true, None) => start = Some(column),
                     (false, Some(from)) => {
@@ -288,6 +288,36 @@ fn names(s: &mut Scene, placer: &mut Placer, m: &Map, view: &MapView, t: f32) {
         for l in placer.place(spots.iter().map(|s| vec![wanted.centred(s.1)])).into_iter().flatten() {
             s.text(l);
         }
+    }
+}
+
+/// For each cell its kind, and how many cells of that kind end there counted along the shank.
+struct Runs {
+    rows: usize,
+    kind: Vec<usize>,
+    run: Vec<usize>,
+}
+
+impl Runs {
+    fn of(m: &Map, kinds: &[&str]) -> Self {
+        let mut all = Self { rows: m.rows, kind: Vec::new(), run: Vec::new() };
+        for column in 0..m.columns {
+            for row in 0..m.rows {
+                let name = m.cell(column, row).map_or("", |c| region(c.ground).0);
+                let kind = kinds.iter().position(|k| *k == name).unwrap_or(kinds.len());
+                let goes_on = row > 0 && all.kind.last() == Some(&kind);
+                let before = all.run.last().copied().filter(|_| goes_on).unwrap_or(0);
+                all.kind.push(kind);
+                all.run.push(before + 1);
+            }
+        }
+        all
+    }
+
+    /// Whether a cell and so many above and below it are of a kind.
+    fn covers(&self, column: usize, row: usize, half: usize, kind: usize) -> bool {
+        let end = column * self.rows + row + half;
+        self.kind[end] == kind && self.run[end] > 2 * half
     }
 }
 
