@@ -1,13 +1,13 @@
 //! Why not lower, and what would change it: the clinician's lines.
 
 use plumbfold_core::{
-    Angle, Case,
+    Angle, Balance, Case, Refusal, posture,
     seen::{DepthGap, LeanGap, SeenStudy},
     stops::{Limit, ShapeOrRange, Stop, Stopped},
     takes::{AtGoal, Change, Kind, Outcome, Pair, Take, Takes},
 };
 
-use super::{clinician, names};
+use super::{clinician, names, notices};
 use crate::format;
 
 /// A limit with its value: `hip range, 98°`.
@@ -58,7 +58,10 @@ pub fn worth(s: &Stop) -> Option<String> {
 #[must_use]
 pub fn stops(s: &Stopped, case: &Case) -> Vec<String> {
     let Some(depth) = s.depth else {
-        return vec!["no depth: not balanced even standing; check lengths, load and heel".to_owned()];
+        return vec![match posture(case, Angle::ZERO) {
+            Balance::Refused(why @ Refusal::Stance) => format!("no depth: {}", notices::refusal(why)),
+            _ => "no depth: not balanced even standing; check lengths, load and heel".to_owned(),
+        }];
     };
     let mut lines = vec![format!("to {}", format::deg(depth))];
     lines.extend(s.stops.iter().map(|x| stop(x, case)));
@@ -261,6 +264,16 @@ mod tests {
         assert!(line(Kind::Ankle).contains("+8°"));
         assert!(line(Kind::Hip).contains("not by itself, 83°"));
         assert_eq!(takes_title(deg(90.0)), "What it would take, to thigh level on mid-foot");
+    }
+
+    #[test]
+    fn a_stance_that_the_legs_cannot_span_is_named() {
+        let (mut m, mut t) = sample::average_man();
+        (m.lengths.thigh_m, m.lengths.shank_m) = (Some(0.22), Some(0.22));
+        t.stance_m = Some(1.2);
+        let (case, _) = Case::new(&m, &t).expect("within bounds");
+        let r = reasons(&case);
+        assert_eq!(stops(&r.steady, &case), ["no depth: the legs do not reach this stance"]);
     }
 
     #[test]
