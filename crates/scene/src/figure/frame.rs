@@ -127,13 +127,19 @@ fn heading(show: &Show<'_>, width: f32, look: &Look) -> (Vec<Label>, f32) {
     (out, y)
 }
 
-/// Captions in the corner under the rail, on the side the client faces; as many lines as fit.
+/// Captions in the corner under the rail, on the side the client faces; smaller where there is little
+/// room, and then as many lines as fit.
 fn captions(show: &Show<'_>, area: Size, look: &Look, floor: f32, width: f32) -> Vec<Label> {
     if look.style == Style::Client {
         return Vec::new();
     }
-    let (t, size) = (look.text, look.text * 0.88);
-    let lines = show.captions().into_iter().flat_map(|c| fonts::wrap(&c, size, Weight::Regular, width));
+    let t = look.text;
+    let wrapped = |size: f32| -> Vec<String> {
+        show.captions().into_iter().flat_map(|c| fonts::wrap(&c, size, Weight::Regular, width)).collect()
+    };
+    let fits = |size: f32| floor + size * (1.75 + 1.35 * (wrapped(size).len() as f32 - 1.0)) <= area.h;
+    let size = [0.88, 0.8, 0.72].map(|k| k * t).into_iter().find(|&size| fits(size)).unwrap_or(0.72 * t);
+    let lines = wrapped(size);
     let x = match look.facing {
         super::Facing::Right => area.w - t - width,
         super::Facing::Left => t,
